@@ -1,0 +1,2 @@
+// Package num: see doc.
+package num

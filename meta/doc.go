@@ -1,0 +1,2 @@
+// Package meta: see doc.
+package meta

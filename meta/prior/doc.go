@@ -1,0 +1,2 @@
+// Package prior: see doc.
+package prior

@@ -1,0 +1,2 @@
+// Package smallstudy: see doc.
+package smallstudy

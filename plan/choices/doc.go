@@ -1,0 +1,2 @@
+// Package choices: see doc.
+package choices

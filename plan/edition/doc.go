@@ -1,0 +1,2 @@
+// Package edition: see doc.
+package edition

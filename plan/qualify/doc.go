@@ -1,0 +1,2 @@
+// Package qualify: see doc.
+package qualify

@@ -1,0 +1,2 @@
+// Package power: see doc.
+package power

@@ -1,0 +1,2 @@
+// Package reports: see doc.
+package reports

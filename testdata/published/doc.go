@@ -1,0 +1,2 @@
+// Package published: see doc.
+package published
