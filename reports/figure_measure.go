@@ -1,0 +1,172 @@
+package reports
+
+import (
+	"sync"
+	"unicode"
+	"unicode/utf8"
+
+	"golang.org/x/image/font"
+	"golang.org/x/image/font/gofont/gobold"
+	"golang.org/x/image/font/gofont/goregular"
+	"golang.org/x/image/font/sfnt"
+	fixedpoint "golang.org/x/image/math/fixed"
+)
+
+// spare widens measured text: the page is set in the reader's own sans-serif, and the widest of the usual ones
+// (DejaVu Sans, measured on the report's labels) stay inside the Go fonts' widths times this.
+const spare = 1.08
+
+type faceWidths struct {
+	once  sync.Once
+	data  []byte
+	font  *sfnt.Font
+	ascii [128]float64
+}
+
+var (
+	regularWidths = faceWidths{data: goregular.TTF}
+	boldWidths    = faceWidths{data: gobold.TTF}
+)
+
+func (f *faceWidths) load() {
+	f.once.Do(func() {
+		parsed, err := sfnt.Parse(f.data)
+		if err != nil {
+			panic("reports: the embedded font is damaged: " + err.Error())
+		}
+		f.font = parsed
+		for r := rune(32); r < 127; r++ {
+			f.ascii[r] = f.glyph(r)
+		}
+	})
+}
+
+// glyph is the advance of a character in em.
+func (f *faceWidths) glyph(r rune) float64 {
+	var b sfnt.Buffer
+	i, err := f.font.GlyphIndex(&b, r)
+	if err != nil || i == 0 {
+		if unicode.In(r, unicode.Mn, unicode.Me, unicode.Cf) {
+			return 0
+		}
+		if r == '\u202f' || r == '\u2009' {
+			return 0.2
+		}
+		return 1 // scripts outside the font: a full square
+	}
+	adv, err := f.font.GlyphAdvance(&b, i, fixedpoint.I(1000), font.HintingNone)
+	if err != nil {
+		return 1
+	}
+	return float64(adv) / 64 / 1000
+}
+
+// textWidth is the width that a text may take on the page, in units of the scene.
+func textWidth(s string, size float64, bold bool) float64 {
+	f := &regularWidths
+	if bold {
+		f = &boldWidths
+	}
+	f.load()
+	var em float64
+	for _, r := range s {
+		if r >= 32 && r < 127 {
+			em += f.ascii[r]
+		} else {
+			em += f.glyph(r)
+		}
+	}
+	return em * size * spare
+}
+
+// clipText cuts a text to a width and ends it in an ellipsis; cut says that something was lost.
+func clipText(s string, width, size float64, bold bool) (short string, cut bool) {
+	if len(s) < 400 && textWidth(s, size, bold) <= width {
+		return s, false
+	}
+	room := width - textWidth("…", size, bold)
+	used := 0.0
+	for i, r := range s {
+		w := textWidth(string(r), size, bold)
+		if used+w > room {
+			return s[:i] + "…", true
+		}
+		used += w
+	}
+	return s, false
+}
+
+// clipped is a label cut to a width, with the whole text as its title when it was cut.
+func clipped(x, y float64, text string, width float64, fill ink, size float64, bold bool) element {
+	short, cut := clipText(text, width, size, bold)
+	e := label(x, y, short, fill, size)
+	e.Bold = bold
+	if cut {
+		e.Title = clipRunes(text, 300)
+	}
+	return e
+}
+
+// clipRunes cuts a text to a number of characters, visibly.
+func clipRunes(s string, most int) string {
+	if utf8.RuneCountInString(s) <= most {
+		return s
+	}
+	n := 0
+	for i := range s {
+		if n == most-1 {
+			return s[:i] + "…"
+		}
+		n++
+	}
+	return s
+}
+
+// wrapText breaks a text into lines of at most a width, at spaces; what is longer than a line is clipped.
+func wrapText(s string, width, size float64, most int, bold bool) []string {
+	var lines []string
+	current := ""
+	for _, word := range splitWords(s) {
+		next := word
+		if current != "" {
+			next = current + " " + word
+		}
+		if current != "" && textWidth(next, size, bold) > width {
+			lines = append(lines, current)
+			next = word
+			if len(lines) == most {
+				last, _ := clipText(lines[most-1]+" "+word, width, size, bold)
+				lines[most-1] = last
+				return lines
+			}
+		}
+		current = next
+	}
+	if current != "" {
+		lines = append(lines, current)
+	}
+	for i := range lines {
+		lines[i], _ = clipText(lines[i], width, size, bold)
+	}
+	return lines
+}
+
+// splitWords splits at ordinary spaces only, so that thin spaces stay inside numbers.
+func splitWords(s string) []string {
+	var words []string
+	start := -1
+	for i, r := range s {
+		if r == ' ' {
+			if start >= 0 {
+				words = append(words, s[start:i])
+				start = -1
+			}
+		} else if start < 0 {
+			start = i
+		}
+	}
+	if start >= 0 {
+		words = append(words, s[start:])
+	}
+	return words
+}

@@ -1,0 +1,181 @@
+package reports
+
+import "math"
+
+// rowPlot is a list of rows with an estimate and its interval on one axis, and numbers in columns at the right: the
+// frame of the figures on adjusted estimates and on leaving studies out.
+type rowPlot struct {
+	o       figureOptions
+	scale   effectScale
+	rows    []plotRow
+	band    [2]float64 // an interval drawn through all rows; equal ends: none
+	middle  *float64   // a line through all rows
+	marked  *float64   // smallest worthwhile effect
+	columns []string   // headings of plotRow.Cells
+	note    string     // under the axis at its left
+}
+
+type plotRow struct {
+	name         string
+	bold, weak   bool
+	estimate     *float64
+	lower, upper *float64
+	cells        []string
+	why          string // in place of a mark
+	ink          ink
+}
+
+func (r rowPlot) draw() scene {
+	s := scene{W: r.o.width()}
+	nameRoom, cellRoom := 60.0, 0.0
+	for _, row := range r.rows {
+		nameRoom = math.Max(nameRoom, textWidth(row.name, 12, row.bold))
+	}
+	nameRoom = math.Min(nameRoom, 290)
+	columns := r.columns
+	if r.o.narrow {
+		nameRoom = math.Min(nameRoom, 130)
+		if len(columns) > 1 {
+			columns = columns[:1]
+		}
+	}
+	widths := make([]float64, len(columns))
+	for i, h := range columns {
+		widths[i] = textWidth(h, 11, false)
+		for _, row := range r.rows {
+			if i < len(row.cells) {
+				widths[i] = math.Max(widths[i], textWidth(row.cells[i], 12, row.bold))
+			}
+		}
+		widths[i] += 16
+		cellRoom += widths[i]
+	}
+	x := r.domain(nameRoom+14, s.W-cellRoom-12)
+	top, rowH := 22.0, 22.0
+	if len(r.rows) > 30 {
+		rowH = 17
+	}
+	bottom := top + rowH*float64(len(r.rows)) + 4
+	if r.band[0] != r.band[1] {
+		a, b := x.cut(r.band[0]), x.cut(r.band[1])
+		s.add(rect(a, top-2, b-a, bottom-top+2, inkEvidenceWash))
+	}
+	if r.middle != nil {
+		s.add(line(x.at(*r.middle), top-2, x.at(*r.middle), bottom, inkEvidence, 1))
+	}
+	none := x.at(r.scale.NoEffect)
+	s.add(line(none, top-2, none, bottom, inkSoft, 1))
+	if r.marked != nil && x.holds(*r.marked) {
+		m := x.at(*r.marked)
+		s.add(line(m, top-4, m, bottom, inkPlan, 2).dash("3 4"))
+		text := "smallest worthwhile " + r.scale.text(*r.marked)
+		e := label(m+5, 12, text, inkPlan, 11)
+		if m+5+textWidth(text, 11, false) > x.B+20 {
+			e = label(math.Max(m-5, textWidth(text, 11, false)), 12, text, inkPlan, 11).end()
+		}
+		s.add(e)
+	}
+	at := s.W - cellRoom
+	for i, h := range columns {
+		at += widths[i]
+		s.add(label(at, 12, h, inkSoft, 11).end())
+		for j, row := range r.rows {
+			if i < len(row.cells) {
+				e := label(at, top+rowH*(float64(j)+0.5)+4, row.cells[i], inkText, 12).end()
+				e.Bold = row.bold
+				s.add(e)
+			}
+		}
+	}
+	for j, row := range r.rows {
+		r.drawRow(&s, x, row, top+rowH*(float64(j)+0.5), nameRoom)
+	}
+	s.H = r.axisLine(&s, x, bottom)
+	return s
+}
+
+func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
+	s.add(clipped(0, y+4, row.name, nameRoom, inkText, 12, row.bold))
+	if row.estimate == nil {
+		text, _ := clipText(row.why, x.B-x.A, 11, false)
+		s.add(rect(x.A, y-8, textWidth(text, 11, false)+6, 16, inkPaper), label(x.A+2, y+4, text, inkSoft, 11))
+		return
+	}
+	i := row.ink
+	if i == inkNone {
+		i = inkEvidence
+	}
+	width, radius := 1.6, 4.5
+	if row.bold {
+		width, radius = 3, 5
+	}
+	if row.lower != nil && row.upper != nil {
+		a, b := x.cut(*row.lower), x.cut(*row.upper)
+		l := line(a, y, b, y, i, width)
+		if row.weak {
+			l = l.dash("3 3")
+		}
+		s.add(l)
+		if !x.holds(*row.lower) {
+			s.add(path([]point{{a + 5, y - 3}, {a, y}, {a + 5, y + 3}}, i, width))
+		}
+		if !x.holds(*row.upper) {
+			s.add(path([]point{{b - 5, y - 3}, {b, y}, {b - 5, y + 3}}, i, width))
+		}
+	}
+	if row.weak {
+		s.add(circle(x.cut(*row.estimate), y, radius-0.8, inkPaper).outline(i, 1.8))
+		return
+	}
+	s.add(circle(x.cut(*row.estimate), y, radius, i))
+}
+
+// domain covers all estimates, no effect, the band, and intervals up to 0.6 of the spread beyond.
+func (r rowPlot) domain(a, b float64) axis {
+	lo, hi := r.scale.NoEffect, r.scale.NoEffect
+	cover := func(v float64) { lo, hi = math.Min(lo, v), math.Max(hi, v) }
+	for _, row := range r.rows {
+		if row.estimate != nil {
+			cover(*row.estimate)
+		}
+	}
+	if r.band[0] != r.band[1] {
+		cover(r.band[0])
+		cover(r.band[1])
+	}
+	if r.marked != nil {
+		cover(*r.marked)
+	}
+	spreadOf := hi - lo
+	if spreadOf == 0 {
+		spreadOf = 1
+	}
+	floor, roof := lo-0.6*spreadOf, hi+0.6*spreadOf
+	for _, row := range r.rows {
+		if row.lower != nil && row.upper != nil {
+			cover(math.Max(floor, *row.lower))
+			cover(math.Min(roof, *row.upper))
+		}
+	}
+	pad := 0.03 * (hi - lo)
+	return axis{Lo: lo - pad, Hi: hi + pad, A: a, B: b}
+}
+
+func (r rowPlot) axisLine(s *scene, x axis, bottom float64) float64 {
+	s.add(line(x.A, bottom, x.B, bottom, inkFaint, 1))
+	for _, t := range r.scale.ticks(x.Lo, x.Hi, map[bool]int{false: 6, true: 4}[r.o.narrow]) {
+		s.add(line(x.at(t.Value), bottom, x.at(t.Value), bottom+4, inkFaint, 1), label(x.at(t.Value), bottom+17, t.Text, inkSoft, 11).middle())
+	}
+	words, right := r.scale.direction()
+	short, _ := clipText(words, x.B-x.A, 11, false)
+	if right {
+		s.add(label(x.B, bottom+33, short, inkSoft, 11).end())
+	} else {
+		s.add(label(x.A, bottom+33, short, inkSoft, 11))
+	}
+	if r.note != "" {
+		note, _ := clipText(r.note, x.A-10, 11, false)
+		s.add(label(0, bottom+17, note, inkSoft, 11))
+	}
+	return bottom + 38
+}
