@@ -7,13 +7,16 @@ import (
 
 // Sheet is an evidence sheet as read and as understood.
 type Sheet struct {
-	File     string // as the caller named it
-	Name     string // sheet name; "" for text files
-	SHA256   string // of the file's bytes, hex
-	Layout   string // "one row per study", ... in words
+	File     string   // as the caller named it
+	Name     string   // sheet name; "" for text files
+	SHA256   string   // of the file's bytes, hex
+	Layout   string   // "one row per study", ... in words
+	Sheets   []string // names of all sheets of the file
 	Headings []Heading
 	Records  []Record
 	Findings []finding.Finding
+
+	told map[string]int // findings so far, by kind
 }
 
 // Heading is one column as typed and as understood.
@@ -24,6 +27,12 @@ type Heading struct {
 	Meaning Meaning // "" when not understood: the column is kept as a note
 	Why     string  // "by its heading", "by the plan's columns:", ...
 	First   []string
+
+	Scale   effect.Scale // scale that the heading itself names ("odds ratio"), "" when it names none
+	Log     bool         // the heading says that the ratio is printed as its logarithm
+	Level   float64      // level that a heading of confidence limits names ("90% CI lower"), 0 when none
+	Percent bool         // the heading says that the values are percentages
+	Sides   int          // sides of a p that the heading names, 0 when none
 }
 
 // Meaning is what a column means, in the words of a heading: "treatment mean", "control sd", "ci lower", ...
@@ -36,7 +45,7 @@ type Cell struct {
 	Column  int
 	Heading string
 	Meaning Meaning
-	Text    string // raw text as stored, never display text
+	Text    string // raw text as stored, never display text; a date as its ISO form
 }
 
 // Record is one row of the evidence sheet (one study, in the simplest layout).
@@ -49,6 +58,7 @@ type Record struct {
 	HasRelevance bool
 	Subgroup     string
 	Status       string
+	Hidden       bool // the row is hidden in the spreadsheet
 	Reported     effect.Reported
 	Cells        []Cell
 	Other        map[string]string // columns that were not understood, by heading as typed: for moderators and filters

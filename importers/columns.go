@@ -1,0 +1,333 @@
+package importers
+
+import (
+	"fmt"
+	"slices"
+	"sort"
+	"strings"
+
+	"footing/internal/finding"
+	"footing/meta/effect"
+)
+
+// column is one column on its way from heading to meaning.
+type column struct {
+	Heading
+	u      understood
+	known  bool // the heading was understood, though the column may have lost its meaning to another
+	byPlan bool
+}
+
+// columnSet is the heading row as understood.
+type columnSet struct {
+	row  int // index into grid.rows
+	list []column
+}
+
+// mapping is Options.Columns, checked: heading (folded) to meaning.
+type mapping map[string]Meaning
+
+// foldHeading makes headings comparable: case, spaces and look-alike characters don't count.
+func foldHeading(s string) string {
+	return strings.ToLower(strings.Join(strings.Fields(plainText(s)), " "))
+}
+
+// checkColumns refuses meanings that don't exist and headings named twice.
+func checkColumns(g *grid, opt Options) (mapping, error) {
+	known := map[string]bool{}
+	var names []string
+	for _, m := range Meanings() {
+		known[string(m)] = true
+		names = append(names, string(m))
+	}
+	var ps finding.Problems
+	out := mapping{}
+	keys := make([]string, 0, len(opt.Columns))
+	for k := range opt.Columns {
+		keys = append(keys, k)
+	}
+	sort.Strings(keys)
+	for _, k := range keys {
+		m := strings.ToLower(strings.TrimSpace(k))
+		if !known[m] {
+			if u, ok := understand(k, nil); ok && u.rest == "" {
+				m = string(u.meaning)
+			} else {
+				mend := "footing knows these meanings: " + strings.Join(names, ", ")
+				if near := nearest(m, names); near != "" {
+					mend = fmt.Sprintf("did you mean %q?", near)
+				}
+				ps = append(ps, problem("meaning-unknown", g.place(""), fmt.Sprintf("columns: has %q, which is no meaning of a column", shorten(k)), mend).Finding)
+				continue
+			}
+		}
+		h := foldHeading(opt.Columns[k])
+		if other, taken := out[h]; taken {
+			ps = append(ps, problem("heading-mapped-twice", g.place(""), fmt.Sprintf("columns: gives the heading %q two meanings, %q and %q", shorten(opt.Columns[k]), other, m), "give each heading one meaning").Finding)
+			continue
+		}
+		out[h] = Meaning(m)
+	}
+	if len(ps) > 0 {
+		return nil, ps
+	}
+	return out, nil
+}
+
+// findHeadings takes the row with the most headings that are understood, among the first 60 rows with cells.
+func findHeadings(g *grid, mp mapping, opt Options) (columnSet, bool) {
+	best, bestScore := columnSet{}, 1
+	for i := 0; i < len(g.rows) && i < 60; i++ {
+		set := readHeadings(g, i, mp, opt)
+		seen := map[Meaning]bool{}
+		numbers := 0
+		for _, c := range set.list {
+			if c.Meaning != "" {
+				seen[c.Meaning] = true
+			}
+		}
+		for _, c := range g.rows[i].cells {
+			if c.kind != textCell {
+				numbers++
+			}
+		}
+		score := len(seen)
+		if numbers > len(g.rows[i].cells)/2 {
+			continue
+		}
+		if score > bestScore {
+			best, bestScore = set, score
+		}
+	}
+	return best, bestScore > 1
+}
+
+// readHeadings reads row i as the heading row.
+func readHeadings(g *grid, i int, mp mapping, opt Options) columnSet {
+	set := columnSet{row: i}
+	for _, c := range g.rows[i].cells {
+		h := Heading{Column: int(c.column), Cell: address(int(c.column), g.rows[i].n), Typed: strings.TrimSpace(c.text)}
+		col := column{Heading: h}
+		if m, ok := mp[foldHeading(c.text)]; ok {
+			col.Meaning, col.byPlan, col.known = m, true, true
+			col.Why = "by the plan's columns:"
+			if u, ok := understand(c.text, opt.Groups); ok {
+				col.u = u
+			}
+			col.u.meaning, col.u.rest, col.u.rank = m, "", -1
+		} else if len(c.text) <= 200 {
+			if u, ok := understand(c.text, opt.Groups); ok {
+				col.u, col.known = u, true
+				if u.rest == "" {
+					col.Meaning, col.Why = u.meaning, "by its heading"
+				}
+			}
+		}
+		set.list = append(set.list, col)
+	}
+	set.inferArm()
+	set.settleDoubles()
+	for k := range set.list {
+		c := &set.list[k]
+		c.Scale, c.Log, c.Level, c.Percent, c.Sides = c.u.scale, c.u.log, c.u.level, c.u.percent, c.u.sides
+	}
+	return set
+}
+
+// inferArm settles headings such as "M (break)" beside "M (control)": where one arm is named and all other headings
+// about a group carry the same further words, those words are the name of the other arm.
+func (s *columnSet) inferArm() {
+	rests, arms := map[string][]int{}, map[string]bool{}
+	for i, c := range s.list {
+		if c.byPlan || !c.known {
+			continue
+		}
+		_, armable := armFigures[c.u.meaning]
+		switch arm, _, ok := strings.Cut(string(c.u.meaning), " "); {
+		case c.u.rest != "" && (armable || c.u.meaning == StandardError):
+			rests[c.u.rest] = append(rests[c.u.rest], i)
+		case c.u.rest == "" && ok && (arm == "treatment" || arm == "control"):
+			arms[arm] = true
+		}
+	}
+	if len(arms) != 1 {
+		return
+	}
+	other := "treatment"
+	if arms["treatment"] {
+		other = "control"
+	}
+	for rest, at := range rests {
+		// The words must stand behind the same figures as the named arm's.
+		twins := 0
+		for _, i := range at {
+			for _, c := range s.list {
+				m := s.list[i].armMeaning()
+				if c.u.rest == "" && c.Meaning == Meaning(map[string]string{"treatment": "control", "control": "treatment"}[other])+" "+m {
+					twins++
+				}
+			}
+		}
+		if twins < len(at) || twins < 2 || len(rests) > 1 && !mostTwins(rests, rest) {
+			continue
+		}
+		for _, i := range at {
+			c := &s.list[i]
+			c.Meaning = Meaning(other) + " " + c.armMeaning()
+			c.u.meaning = c.Meaning
+			c.Why = fmt.Sprintf("by its heading; %q taken as the name of the %s group", rest, other)
+		}
+		return
+	}
+}
+
+// mostTwins reports whether rest stands behind more figures than any other words.
+func mostTwins(rests map[string][]int, rest string) bool {
+	for r, at := range rests {
+		if r != rest && len(at) >= len(rests[rest]) {
+			return false
+		}
+	}
+	return true
+}
+
+func (c column) armMeaning() Meaning {
+	if c.u.meaning == StandardError {
+		return "se"
+	}
+	return c.u.meaning
+}
+
+// settleDoubles leaves each meaning to one column: the caller's choice, then the plainest heading, then the first.
+func (s *columnSet) settleDoubles() {
+	for i := range s.list {
+		for j := range s.list {
+			a, b := &s.list[i], &s.list[j]
+			if i == j || a.Meaning == "" || a.Meaning != b.Meaning || a.Meaning == Notes {
+				continue
+			}
+			if b.u.rank > a.u.rank || b.u.rank == a.u.rank && j > i {
+				b.Meaning = ""
+				b.Why = fmt.Sprintf("a second column for %q; column %s is used", a.Meaning, columnName(a.Column))
+			}
+		}
+	}
+}
+
+// meanings gives the columns by meaning.
+func (s *columnSet) find(m Meaning) *column {
+	for i := range s.list {
+		if s.list[i].Meaning == m {
+			return &s.list[i]
+		}
+	}
+	return nil
+}
+
+func (s *columnSet) has(ms ...Meaning) bool {
+	return slices.ContainsFunc(ms, func(m Meaning) bool { return s.find(m) != nil })
+}
+
+// sayHeadings reports what was not understood, or only by a guess.
+func (s *columnSet) sayHeadings(g *grid) {
+	var weak []string
+	for _, c := range s.list {
+		switch {
+		case c.Meaning != "" && c.u.weakArm && !c.byPlan:
+			weak = append(weak, fmt.Sprintf("%q", shorten(c.Typed)))
+		case c.Meaning == "" && c.known && c.u.rest == "" && c.u.rank == 0:
+			g.note(finding.Warning, "two-columns-one-meaning", c.Cell, fmt.Sprintf("the heading %q means the same as another column; this one is kept as a note", shorten(c.Typed)),
+				"say in columns: which one is meant, or rename one")
+		case c.Meaning == "" && !aside[foldHeading(c.Typed)] && c.Typed != "" && !c.known:
+			s.sayNotUnderstood(g, c)
+		case c.Meaning == "" && c.known && c.u.rest != "":
+			s.sayHalf(g, c)
+		}
+	}
+	if len(weak) > 0 {
+		g.note(finding.Note, "arms-by-number", s.list[0].Cell, fmt.Sprintf("the headings %s name the groups by a number or a letter: the first is read as treatment, the second as control", strings.Join(weak, ", ")),
+			"name the columns in columns: if it is the other way round")
+	}
+}
+
+func (s *columnSet) sayNotUnderstood(g *grid, c column) {
+	if near := nearestPhrase(c.Typed); near != "" {
+		g.note(finding.Warning, "heading-near-miss", c.Cell, fmt.Sprintf("the heading %q is not understood, so the column is kept as a note", shorten(c.Typed)), fmt.Sprintf("did you mean %q?", near))
+		return
+	}
+	g.note(finding.Note, "heading-not-understood", c.Cell, fmt.Sprintf("the heading %q is not understood, so the column is kept as a note", shorten(c.Typed)),
+		"name its meaning in columns: if it holds a figure")
+}
+
+// sayHalf reports a heading with a known figure and words that say no more.
+func (s *columnSet) sayHalf(g *grid, c column) {
+	sev, mend := finding.Note, "name its meaning in columns: if the effect should use it"
+	if _, armable := armFigures[c.u.meaning]; armable {
+		sev = finding.Warning
+		mend = fmt.Sprintf("name its meaning in columns: (for example %q), or name the groups", "treatment "+string(c.u.meaning))
+	}
+	if near := nearestPhrase(c.Typed); near != "" {
+		sev, mend = finding.Warning, fmt.Sprintf("did you mean %q?", near)
+	}
+	g.note(sev, "heading-half-understood", c.Cell, fmt.Sprintf("in the heading %q the words %q are not understood, so the column is kept as a note", shorten(c.Typed), shorten(c.u.rest)), mend)
+}
+
+// nearestPhrase looks for a slip of the pen: each word of the heading that is in no phrase is put right by its nearest
+// known word, and the result must then be understood.
+func nearestPhrase(typed string) string {
+	words := headingWords(typed)
+	if len(words) == 0 || len(words) > 8 {
+		return ""
+	}
+	changed := false
+	for i, w := range words {
+		if vocabulary[w] || len(w) < 4 {
+			continue
+		}
+		near := nearest(w, vocabularyList)
+		if near == "" || edits([]rune(w), []rune(near)) > len(w)/4 {
+			return ""
+		}
+		words[i], changed = near, true
+	}
+	if !changed {
+		return ""
+	}
+	fixed := strings.Join(words, " ")
+	if u, ok := understand(fixed, nil); !ok || u.rest != "" {
+		return ""
+	}
+	return fixed
+}
+
+var vocabulary, vocabularyList = buildVocabulary()
+
+func buildVocabulary() (map[string]bool, []string) {
+	set := map[string]bool{}
+	for p := range phrases {
+		for _, w := range strings.Fields(p) {
+			set[w] = true
+		}
+	}
+	for w := range filler {
+		set[w] = true
+	}
+	var list []string
+	for w := range set {
+		if len(w) >= 4 {
+			list = append(list, w)
+		}
+	}
+	sort.Strings(list)
+	return set, list
+}
+
+// estimateScale is the scale that the heading of the estimates names.
+func (s *columnSet) estimateScale() (effect.Scale, bool) {
+	for _, m := range []Meaning{Estimate, CILower, CIUpper, StandardError} {
+		if c := s.find(m); c != nil && c.u.scale != "" {
+			return c.u.scale, c.u.log
+		}
+	}
+	return "", false
+}

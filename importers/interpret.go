@@ -1,0 +1,218 @@
+package importers
+
+import (
+	"fmt"
+	"strings"
+
+	"footing/internal/finding"
+)
+
+// interpret turns a grid into an evidence sheet: headings, then records, then checks across the rows.
+func interpret(g *grid, opt Options) (*Sheet, error) {
+	if opt.Decimal == "," || opt.Decimal == "." {
+		g.mark = decimalMark(opt.Decimal[0])
+	}
+	if len(g.rows) == 0 {
+		return nil, problem("sheet-empty", g.place(""), "the sheet is empty", "put the prior studies in it, one row each under a row of headings")
+	}
+	mp, err := checkColumns(g, opt)
+	if err != nil {
+		return nil, err
+	}
+	set, ok := findHeadings(g, mp, opt)
+	if !ok {
+		return nil, noHeadings(g, mp, opt)
+	}
+	if err := missingMapped(g, &set, mp, opt); err != nil {
+		return nil, err
+	}
+	before := len(g.findings)
+	set.addUnnamed(g)
+	set.guessStudy(g)
+	set.sayHeadings(g)
+	s := &Sheet{File: g.file, Name: g.name, Sheets: g.sheets, Layout: "one row per study"}
+	r := newRecordReader(g, &set)
+	s.Records = r.readAll()
+	if len(s.Records) == 0 {
+		g.findings = g.findings[:before]
+		return nil, problem("no-records", g.place(g.rows[set.row].name()), "there is no row with figures under the headings", "put one row for each prior study under them")
+	}
+	for _, c := range set.list {
+		s.Headings = append(s.Headings, c.Heading)
+	}
+	s.fillFirst()
+	g.sayHidden(&set, s)
+	if g.formulas > 0 {
+		g.note(finding.Note, "formulas", "", fmt.Sprintf("%d cells hold formulas; the values stored with them were used", g.formulas), "")
+	}
+	s.Findings = g.findings
+	s.checkRows()
+	return s, nil
+}
+
+func (r row) name() string { return fmt.Sprintf("row %d", r.n) }
+
+// noHeadings says what stood in the first rows.
+func noHeadings(g *grid, mp mapping, opt Options) error {
+	var seen []string
+	mend := "put a row of headings above the studies, such as study, estimate, standard error; or name the headings in columns:"
+	for i := 0; i < len(g.rows) && i < 5; i++ {
+		for _, c := range g.rows[i].cells {
+			if c.kind != textCell || len(seen) >= 12 {
+				continue
+			}
+			seen = append(seen, fmt.Sprintf("%q", shorten(c.text)))
+			if near := nearestPhrase(c.text); near != "" && !strings.HasPrefix(mend, "did") {
+				mend = fmt.Sprintf("did you mean %q by %q?", near, shorten(c.text))
+			}
+		}
+	}
+	what := "no row of headings was found"
+	if len(seen) > 0 {
+		what += "; the first cells are " + strings.Join(seen, ", ")
+	}
+	return problem("no-headings", g.place(""), what, mend)
+}
+
+// missingMapped reports headings that columns: names but the sheet doesn't have.
+func missingMapped(g *grid, set *columnSet, mp mapping, opt Options) error {
+	var ps finding.Problems
+	var typed []string
+	have := map[string]bool{}
+	for _, c := range set.list {
+		have[foldHeading(c.Typed)] = true
+		typed = append(typed, c.Typed)
+	}
+	for _, m := range Meanings() {
+		for h, meaning := range mp {
+			if meaning != m || have[h] {
+				continue
+			}
+			mend := "the sheet has: " + quoteAll(typed)
+			if near := nearest(h, typed); near != "" {
+				mend = fmt.Sprintf("did you mean %q?", shorten(near))
+			}
+			ps = append(ps, problem("heading-not-found", g.place(g.rows[set.row].name()), fmt.Sprintf("columns: names the heading %q for %s, which the sheet doesn't have", shorten(h), m), mend).Finding)
+		}
+	}
+	if len(ps) > 0 {
+		return ps
+	}
+	return nil
+}
+
+func quoteAll(list []string) string {
+	var out []string
+	for i, s := range list {
+		if i == 20 {
+			out = append(out, "...")
+			break
+		}
+		out = append(out, fmt.Sprintf("%q", shorten(s)))
+	}
+	return strings.Join(out, ", ")
+}
+
+// addUnnamed adds columns that hold cells below the headings but have none. In a text file such cells mean that a row
+// was cut wrongly; the record reader reports them.
+func (s *columnSet) addUnnamed(g *grid) {
+	seen := map[int]bool{}
+	last := 0
+	for _, c := range s.list {
+		seen[c.Column] = true
+		last = max(last, c.Column)
+	}
+	for _, r := range g.rows[s.row+1:] {
+		for _, c := range r.cells {
+			k := int(c.column)
+			if seen[k] || g.strict && k > last {
+				continue
+			}
+			seen[k] = true
+			s.list = append(s.list, column{Heading: Heading{Column: k, Cell: address(k, g.rows[s.row].n), Why: "no heading"}})
+		}
+	}
+	sortColumns(s.list)
+}
+
+func sortColumns(list []column) {
+	for i := 1; i < len(list); i++ {
+		for j := i; j > 0 && list[j].Column < list[j-1].Column; j-- {
+			list[j], list[j-1] = list[j-1], list[j]
+		}
+	}
+}
+
+// guessStudy takes the first column of words as the studies' labels where no heading says which one it is.
+func (s *columnSet) guessStudy(g *grid) {
+	if s.has(Study) {
+		return
+	}
+	for i := range s.list {
+		c := &s.list[i]
+		if c.Meaning != "" || aside[foldHeading(c.Typed)] || c.known {
+			continue
+		}
+		texts, others := 0, 0
+		distinct := map[string]bool{}
+		for _, r := range g.rows[s.row+1:] {
+			if x, ok := r.at(c.Column); ok {
+				if x.kind == textCell {
+					if _, fault := parseNumber(x.text, '.'); fault == numberNot {
+						texts++
+						distinct[x.text] = true
+						continue
+					}
+				}
+				others++
+			}
+		}
+		if texts > others && len(distinct)*2 > texts {
+			c.Meaning, c.known, c.Why = Study, true, "the first column of words: no heading says which one names the studies"
+			c.u.meaning = Study
+			g.note(finding.Note, "study-column-guessed", c.Cell, fmt.Sprintf("no heading names the studies; column %s was taken for it", columnName(c.Column)), `give the column the heading "study"`)
+			return
+		}
+	}
+}
+
+// fillFirst keeps the first values of each column, as typed.
+func (s *Sheet) fillFirst() {
+	for i := range s.Headings {
+		h := &s.Headings[i]
+		for _, r := range s.Records {
+			if len(h.First) == 3 {
+				break
+			}
+			for _, c := range r.Cells {
+				if c.Column == h.Column {
+					h.First = append(h.First, shorten(c.Text))
+				}
+			}
+		}
+	}
+}
+
+// sayHidden reports rows and columns that are hidden in the spreadsheet and were read all the same.
+func (g *grid) sayHidden(set *columnSet, s *Sheet) {
+	var rows []string
+	for _, r := range s.Records {
+		if r.Hidden {
+			rows = append(rows, fmt.Sprint(r.Row))
+		}
+	}
+	if len(rows) > 0 {
+		more := ""
+		if len(rows) > 20 {
+			rows, more = rows[:20], ", ..."
+		}
+		g.note(finding.Warning, "hidden-rows", "", fmt.Sprintf("hidden rows were read: %s%s", strings.Join(rows, ", "), more), "show or delete them in the spreadsheet, or leave them out by a status column")
+	}
+	for _, k := range g.hiddenColumns {
+		for _, c := range set.list {
+			if c.Column == k && c.Meaning != "" {
+				g.note(finding.Note, "hidden-column", c.Cell, fmt.Sprintf("the hidden column %s (%s) was read", columnName(k), c.Meaning), "")
+			}
+		}
+	}
+}
