@@ -22,6 +22,9 @@ func nearest(want string, candidates []string) string {
 	return best
 }
 
+// Nearest gives the candidate that want was probably meant to be, "" when none is near.
+func Nearest(want string, candidates []string) string { return nearest(want, candidates) }
+
 // edits is the number of letters to put in, take out, replace or swap with their neighbour to turn a into b (the
 // restricted form of Damerau 1964).
 func edits(a, b []rune) int {

@@ -1,9 +1,14 @@
 package plan
 
+import "footing/internal/finding"
+
 // File is a plan file as written (design of the keys: README, "The plan file"). Pointers and empty strings mean "not
 // given"; Load fills no defaults in, WithDefaults does, so that a run can say which values were the user's.
 type File struct {
-	Path string `yaml:"-"` // where it was read from; evidence paths are relative to its folder
+	Path   string `yaml:"-"` // where it was read from; evidence paths are relative to its folder
+	SHA256 string `yaml:"-"` // of the file's bytes, hex
+
+	at map[string]finding.Place // where each given value stands, by its path
 
 	Title    string `yaml:"title"`
 	Question string `yaml:"question"`
