@@ -300,6 +300,18 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 		if rec.Reported.Direction = d; !ok && !isMissing(folded) {
 			unclear("direction that is known here", `use "favours treatment" or "favours control"`)
 		}
+	case Better:
+		switch folded {
+		case "yes", "y", "true", "1", "higher", "+":
+			rec.HigherBetter = new(bool)
+			*rec.HigherBetter = true
+		case "no", "n", "false", "0", "lower", "-1":
+			rec.HigherBetter = new(bool)
+		default:
+			if !isMissing(folded) {
+				unclear("answer to whether higher is better", "use yes or no")
+			}
+		}
 	case SidesOfP:
 		switch strings.NewReplacer("-", " ", "sided", "", "tailed", "", "tail", "").Replace(folded) {
 		case "1", "one", "1 ", "one ", "1.0":

@@ -186,7 +186,7 @@ func (f feature) alternative(phrase string, n, all int) feature {
 var bases = map[string]string{
 	"study": "study", "study2": "study", "study3": "study", "study+year": "study", "study+study2": "study", "study+study3": "study", "study3+year": "study", "study2+year": "study", "study2+study3": "study",
 	"year": "year", "risk": "risk of bias", "relevance": "relevance", "subgroup": "subgroup", "status": "status",
-	"notes": "notes", "direction": "direction", "scale": "scale", "sides": "sides", "p+sides": "p",
+	"notes": "notes", "direction": "direction", "better": "higher is better", "scale": "scale", "sides": "sides", "p+sides": "p",
 	"mean": "arm mean", "sd": "arm sd", "se": "arm se", "n": "arm n", "total": "arm n", "n+total": "arm n",
 	"mean+sd": "", "median": "arm median", "q1": "arm q1", "q3": "arm q3", "min": "arm min", "max": "arm max",
 	"events": "arm events", "events+n": "arm events", "nonevents": "arm non-events", "n+nonevents": "arm non-events",

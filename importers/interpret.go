@@ -2,7 +2,10 @@ package importers
 
 import (
 	"fmt"
+	"slices"
 	"strings"
+
+	"github.com/xuri/excelize/v2"
 
 	"footing/internal/finding"
 )
@@ -26,6 +29,7 @@ func interpret(g *grid, opt Options) (*Sheet, error) {
 	if err := missingMapped(g, &set, mp, opt); err != nil {
 		return nil, err
 	}
+	g.override(opt.Overrides)
 	before := len(g.findings)
 	set.addUnnamed(g)
 	set.guessStudy(g)
@@ -215,4 +219,28 @@ func (g *grid) sayHidden(set *columnSet, s *Sheet) {
 			}
 		}
 	}
+}
+
+// override puts other texts into cells.
+func (g *grid) override(by map[string]string) {
+	for i := range g.rows {
+		r := &g.rows[i]
+		for at, text := range by {
+			column, n, err := excelize.CellNameToCoordinates(at)
+			if err != nil || n != r.n {
+				continue
+			}
+			k, found := slices.BinarySearchFunc(r.cells, column, func(c cell, want int) int { return int(c.column) - want })
+			c := cell{text: text, column: int32(column)}
+			switch {
+			case found && strings.TrimSpace(text) == "":
+				r.cells = slices.Delete(r.cells, k, k+1)
+			case found:
+				r.cells[k] = c
+			case strings.TrimSpace(text) != "":
+				r.cells = slices.Insert(r.cells, k, c)
+			}
+		}
+	}
+	g.rows = slices.DeleteFunc(g.rows, func(r row) bool { return len(r.cells) == 0 })
 }

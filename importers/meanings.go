@@ -16,6 +16,7 @@ const (
 	Direction  Meaning = "direction" // which way a result without a sign went
 	ScaleOf    Meaning = "scale"     // scale of the row's estimate, in words
 	SidesOfP   Meaning = "sides"     // of the p-value
+	Better     Meaning = "higher is better"
 )
 
 // The meanings of columns that hold one figure of the comparison.
@@ -105,7 +106,7 @@ var armOrder = []Meaning{"n", "mean", "sd", "se", "ci lower", "ci upper", "media
 // plainOrder is the order in which all other meanings are listed.
 var plainOrder = []Meaning{Study, Year, Estimate, StandardError, Variance, CILower, CIUpper, CILevel, "mean difference",
 	"difference sd", "difference se", "difference ci lower", "difference ci upper", N, "t", "f", "z", "chi-square", "df",
-	"numerator df", P, SidesOfP, Direction, "r", "point-biserial r", "eta-squared", "covariates", "pre-post correlation",
+	"numerator df", P, SidesOfP, Direction, Better, "r", "point-biserial r", "eta-squared", "covariates", "pre-post correlation",
 	"coefficient", "standardized beta", "outcome sd", "observed minus expected", "log-rank variance",
 	"log-rank chi-square", "total events", "icc", "cluster size", "clusters", "alpha", "items", ScaleOf, RiskOfBias,
 	Relevance, Subgroup, Status, Notes}
@@ -131,7 +132,7 @@ var counts = map[Meaning]bool{"n": true, "treatment n": true, "control n": true,
 
 // words are the meanings whose cells hold words.
 var words = map[Meaning]bool{Study: true, RiskOfBias: true, Subgroup: true, Status: true, Notes: true, Direction: true,
-	ScaleOf: true, SidesOfP: true}
+	ScaleOf: true, SidesOfP: true, Better: true}
 
 // isNumeric reports whether a column of meaning m holds one number a cell.
 func (m Meaning) isNumeric() bool { return m != "" && !words[m] }

@@ -24,6 +24,8 @@ type Options struct {
 	Encoding  string            // of a text file: "utf-8", "windows-1252", ...; "": found out
 	Decimal   string            // decimal mark: "." or ","; "": found out
 	Delimiter string            // of a text file: one character; "": found out
+	Name      string            // of the file, in findings and results; "": the path
+	Overrides map[string]string // cell address to the text to read in place of what stands there (decisions)
 
 	MaxBytes   int64 // largest file; 0 means 64 MiB
 	MaxUnzip   int64 // largest content of a packed file; 0 means 256 MiB
@@ -58,14 +60,22 @@ func Read(path string, opt Options) (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return readBytes(path, data, opt)
+	return readBytes(opt.named(path), data, opt)
+}
+
+// named is the file's name in messages.
+func (o Options) named(path string) string {
+	if o.Name != "" {
+		return o.Name
+	}
+	return path
 }
 
 func readFile(path string, opt Options) ([]byte, error) {
-	at := finding.Place{File: path}
+	at := finding.Place{File: opt.named(path)}
 	f, err := os.Open(path)
 	if err != nil {
-		return nil, openProblem(path, err)
+		return nil, openProblem(path, opt.named(path), err)
 	}
 	defer f.Close()
 	info, err := f.Stat()
@@ -87,8 +97,8 @@ func readFile(path string, opt Options) ([]byte, error) {
 }
 
 // openProblem tells a missing file from one that can't be read, with the nearest name in its folder.
-func openProblem(path string, err error) error {
-	at := finding.Place{File: path}
+func openProblem(path, name string, err error) error {
+	at := finding.Place{File: name}
 	if !errors.Is(err, fs.ErrNotExist) {
 		return problem("file-unreadable", at, "the file can't be opened: "+reason(err), "check the file and its permissions")
 	}

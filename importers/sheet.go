@@ -58,7 +58,8 @@ type Record struct {
 	HasRelevance bool
 	Subgroup     string
 	Status       string
-	Hidden       bool // the row is hidden in the spreadsheet
+	HigherBetter *bool // the row's own word on which way its outcome runs; nil when it has none
+	Hidden       bool  // the row is hidden in the spreadsheet
 	Reported     effect.Reported
 	Cells        []Cell
 	Other        map[string]string // columns that were not understood, by heading as typed: for moderators and filters

@@ -40,6 +40,7 @@ func buildPhrases() map[string]feature {
 	base("status", "status", "state", "included", "include", "inclusion")
 	base("notes", "notes", "note", "comment", "comments", "remark", "remarks", "annotation")
 	base("direction", "direction", "direction of effect", "effect direction", "favours", "favors", "sign")
+	base("better", "higher is better", "higher better", "larger is better", "high is good", "higher is good", "better direction")
 	base("scale", "scale", "effect measure", "measure of effect", "effect type", "type of effect", "effect scale", "metric", "effect size type", "effect size measure")
 	base("sides", "sides", "tails", "sided", "tailed", "number of sides", "one or two sided")
 
