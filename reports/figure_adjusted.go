@@ -156,7 +156,7 @@ func costText(p *result.Plan, cost *float64) string {
 	}
 	currency := ""
 	if c := p.Size.Study.Cost; c != nil {
-		currency = c.Currency
+		currency = clipRunes(c.Currency, 12)
 	}
 	return moneyText(*cost, currency)
 }

@@ -89,6 +89,7 @@ func ratioTicks(lo, hi float64, count int) []tick {
 	sets := [][]float64{
 		{0.01, 0.02, 0.05, 0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8, 0.9, 1, 1.1, 1.2, 1.3, 1.4, 1.5, 1.6, 1.8, 2, 2.5, 3, 4, 5, 10, 20, 50, 100},
 		{0.01, 0.02, 0.05, 0.1, 0.2, 0.4, 0.6, 0.8, 1, 1.25, 1.5, 2, 2.5, 3, 4, 5, 10, 20, 50, 100},
+		{0.01, 0.02, 0.03, 0.05, 0.07, 0.1, 0.2, 0.3, 0.5, 0.7, 1, 1.5, 2, 3, 5, 7, 10, 20, 30, 50, 100},
 		{0.01, 0.02, 0.05, 0.1, 0.2, 0.5, 1, 2, 5, 10, 20, 50, 100},
 		{0.001, 0.01, 0.1, 1, 10, 100, 1000},
 	}
@@ -113,6 +114,26 @@ func ratioTicks(lo, hi float64, count int) []tick {
 		}
 	}
 	return out
+}
+
+// thin leaves ticks out, evenly, until their texts stand apart on an axis.
+func (a axis) thin(ts []tick, size float64) []tick {
+	for len(ts) > 1 {
+		clash := false
+		for i := 1; i < len(ts) && !clash; i++ {
+			gap := math.Abs(a.at(ts[i].Value) - a.at(ts[i-1].Value))
+			clash = gap < (textWidth(ts[i].Text, size, false)+textWidth(ts[i-1].Text, size, false))/2+6
+		}
+		if !clash {
+			break
+		}
+		var kept []tick
+		for i := 0; i < len(ts); i += 2 {
+			kept = append(kept, ts[i])
+		}
+		ts = kept
+	}
+	return ts
 }
 
 func ratioTickText(r float64) string {

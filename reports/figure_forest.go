@@ -239,7 +239,7 @@ func (f *forest) backdrop(s *scene, top, pooledY, bottom float64) {
 		s.add(line(x, top+6, x, bottom, inkPlan, 2).dash("3 4"))
 		text := "smallest worthwhile " + f.scale.text(w.Effect)
 		e := label(x+5, top+10, text, inkPlan, 11)
-		if x+5+textWidth(text, 11, false) > f.columns.plotB+40 {
+		if x+5+textWidth(text, 11, false) > f.columns.plotB {
 			e = label(x-5, top+10, text, inkPlan, 11).end()
 		}
 		s.add(e)
@@ -252,7 +252,7 @@ func (f *forest) axisLine(s *scene, bottom float64) float64 {
 	if f.o.narrow {
 		count = 4
 	}
-	for _, t := range f.scale.ticks(f.x.Lo, f.x.Hi, count) {
+	for _, t := range f.x.thin(f.scale.ticks(f.x.Lo, f.x.Hi, count), 11) {
 		x := f.x.at(t.Value)
 		s.add(line(x, bottom, x, bottom+4, inkFaint, 1), label(x, bottom+17, t.Text, inkSoft, 11).middle())
 	}

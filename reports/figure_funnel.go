@@ -86,7 +86,7 @@ func (f *funnel) draw() scene {
 		s.add(line(a-4, b-4, a+4, b+4, inkText, 1.5), line(a-4, b+4, a+4, b-4, inkText, 1.5))
 	}
 	s.add(line(x.A, y.B, x.B, y.B, inkFaint, 1))
-	for _, t := range f.scale.ticks(x.Lo, x.Hi, map[bool]int{false: 7, true: 5}[f.o.narrow]) {
+	for _, t := range x.thin(f.scale.ticks(x.Lo, x.Hi, map[bool]int{false: 7, true: 5}[f.o.narrow]), 11) {
 		s.add(line(x.at(t.Value), y.B, x.at(t.Value), y.B+4, inkFaint, 1), label(x.at(t.Value), y.B+17, t.Text, inkSoft, 11).middle())
 	}
 	words, _ := f.scale.direction()

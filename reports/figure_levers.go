@@ -59,7 +59,7 @@ func (b barPlot) draw() scene {
 		widths[i] = textWidth(h, 11, false)
 		for _, r := range b.rows {
 			if c := b.cell(r, i, skip); c != "" {
-				widths[i] = math.Max(widths[i], textWidth(c, 12, i == 0))
+				widths[i] = math.Max(widths[i], textWidth(c, 12, i == 0 || r.warning))
 			}
 		}
 		widths[i] += 16
@@ -71,6 +71,12 @@ func (b barPlot) draw() scene {
 			detailRoom = math.Max(detailRoom, textWidth(r.detail, 11, false))
 		}
 		detailRoom = math.Min(detailRoom, 165) + 14
+	}
+	if most := s.W - name - detailRoom - 160; room > most { // hostile or very long cells
+		room = most
+		for i := range widths {
+			widths[i] = room / float64(len(widths))
+		}
 	}
 	x := axis{A: name + 42, B: s.W - room - detailRoom - 42}
 	x.Lo, x.Hi = b.planned, b.planned
@@ -86,9 +92,11 @@ func (b barPlot) draw() scene {
 	at := x.B + 42
 	for i, h := range columns {
 		at += widths[i]
-		s.add(label(at, 14, h, inkSoft, 11).end())
+		short, _ := clipText(h, widths[i], 11, false)
+		s.add(label(at, 14, short, inkSoft, 11).end())
 		for j, r := range b.rows {
-			e := label(at, top+rowH*(float64(j)+0.5)+4, b.cell(r, i, skip), inkText, 12).end()
+			cell, _ := clipText(b.cell(r, i, skip), widths[i], 12, i == 0 || r.warning)
+			e := label(at, top+rowH*(float64(j)+0.5)+4, cell, inkText, 12).end()
 			e.Bold = i == 0 || r.warning
 			s.add(e)
 		}
@@ -101,7 +109,7 @@ func (b barPlot) draw() scene {
 	}
 	s.add(line(px, 20, px, bottom, inkPlan, 1.2).dash("4 3"))
 	s.add(line(x.A, bottom, x.B, bottom, inkFaint, 1))
-	for _, t := range linearTicks(x.Lo, x.Hi, map[bool]int{false: 5, true: 3}[b.o.narrow]) {
+	for _, t := range x.thin(linearTicks(x.Lo, x.Hi, map[bool]int{false: 5, true: 3}[b.o.narrow]), 11) {
 		s.add(line(x.at(t.Value), bottom, x.at(t.Value), bottom+4, inkFaint, 1), label(x.at(t.Value), bottom+17, t.Text, inkSoft, 11).middle())
 	}
 	words := b.xWords
@@ -202,7 +210,7 @@ func sizeColumns(p *result.Plan) []string {
 	if k := p.Size.Study.Cost; k != nil {
 		name := "cost"
 		if k.Currency != "" {
-			name = "cost, " + k.Currency
+			name = "cost, " + clipRunes(k.Currency, 12)
 		}
 		cols = append(cols, name)
 	}

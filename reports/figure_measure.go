@@ -14,7 +14,7 @@ import (
 
 // spare widens measured text: the page is set in the reader's own sans-serif, and the widest of the usual ones
 // (DejaVu Sans, measured on the report's labels) stay inside the Go fonts' widths times this.
-const spare = 1.08
+const spare = 1.16
 
 type faceWidths struct {
 	once  sync.Once

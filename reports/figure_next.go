@@ -20,6 +20,7 @@ func NextFigure(p *result.Plan, o ...FigureOption) Figure {
 		f.scale = effectScale{p.Pool.Scale}
 	}
 	f.s = &scene{W: f.o.width()}
+	f.needLo, f.needHi = f.needRange()
 	f.x = f.domain()
 	base := f.density()
 	bottom := f.need(base)
@@ -35,6 +36,8 @@ type nextStudy struct {
 	pens  map[string]pen
 	s     *scene
 	x     axis
+	// the stretch of the size axis
+	needLo, needHi float64
 }
 
 // domain covers the middle 99% of the distribution, no effect, and every scenario.
@@ -51,9 +54,12 @@ func (f *nextStudy) domain() axis {
 		cover(s.Effect)
 	}
 	pad := 0.02 * (hi - lo)
-	left, right := 54.0, 16.0
+	left, right := 40.0, 16.0
 	if f.o.narrow {
-		left, right = 40, 6
+		right = 6
+	}
+	for _, t := range countTicks(f.needLo, f.needHi, 7) {
+		left = math.Max(left, textWidth(t.Text, 11, false)+8)
 	}
 	return axis{Lo: lo - pad, Hi: hi + pad, A: left, B: f.s.W - right}
 }
@@ -223,8 +229,11 @@ func (f *nextStudy) scenarioLabel(s result.Scenario, y, base float64) {
 	e := label(x+5, y, text, pn.ink, 11)
 	e.Bold = s.Target
 	if x+5+w > f.s.W {
-		e.X, e.Anchor = x-5, "end"
-		f.s.add(rect(x-7-w, y-10, w+4, 13, inkPaper))
+		e.X, e.Anchor = math.Max(x-5, w), "end"
+		if e.X > x-5 {
+			e.X = math.Min(f.s.W, math.Max(w, x+w/2))
+		}
+		f.s.add(rect(e.X-2-w, y-10, w+4, 13, inkPaper))
 	}
 	f.s.add(e)
 }
@@ -234,7 +243,7 @@ func (f *nextStudy) axisLine(bottom float64) {
 	if f.o.narrow {
 		count = 5
 	}
-	for _, t := range f.scale.ticks(f.x.Lo, f.x.Hi, count) {
+	for _, t := range f.x.thin(f.scale.ticks(f.x.Lo, f.x.Hi, count), 11) {
 		x := f.x.at(t.Value)
 		f.s.add(line(x, bottom, x, bottom+4, inkFaint, 1), label(x, bottom+17, t.Text, inkSoft, 11).middle())
 	}

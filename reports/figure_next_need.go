@@ -8,7 +8,7 @@ import (
 // need draws the people that each effect needs under the density, on a logarithmic axis; it gives the place of the
 // lower edge.
 func (f *nextStudy) need(base float64) float64 {
-	lo, hi := f.needRange()
+	lo, hi := f.needLo, f.needHi
 	top := base + 34
 	used := 0.0
 	if f.chanceAt(f.scale.NoEffect) != nil {

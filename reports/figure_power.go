@@ -131,7 +131,13 @@ func (c curveSet) draw() scene {
 		height = 210
 	}
 	x := axis{Lo: 0, Hi: most, A: left, B: s.W - room - 26}
-	y := axis{Lo: 0, Hi: 1, A: 18 + height, B: 18}
+	top := 18.0
+	for _, l := range c.lines {
+		if l.ceiling != nil {
+			top += 14
+		}
+	}
+	y := axis{Lo: 0, Hi: 1, A: top + height, B: top}
 	for i := 0; i <= 5; i++ {
 		v := float64(i) / 5
 		s.add(line(x.A, y.at(v), x.B, y.at(v), inkLine, 1), label(x.A-6, y.at(v)+4, percentText(v), inkSoft, 11).end())
@@ -151,7 +157,7 @@ func (c curveSet) draw() scene {
 	}
 	c.endLabels(&s, x, y, room)
 	c.plannedValues(&s, x, y)
-	for _, t := range linearTicks(0, most, map[bool]int{false: 6, true: 3}[c.o.narrow]) {
+	for _, t := range x.thin(linearTicks(0, most, map[bool]int{false: 6, true: 3}[c.o.narrow]), 11) {
 		s.add(label(x.at(t.Value), y.A+17, t.Text, inkSoft, 11).middle())
 	}
 	words, _ := clipText(c.xWords, x.B-x.A, 11, false)
@@ -162,28 +168,19 @@ func (c curveSet) draw() scene {
 
 // drawCeilings draws the values that no size passes.
 func (c curveSet) drawCeilings(s *scene, x, y axis) {
-	var want []float64
-	var texts []element
+	n := 0
 	for _, l := range c.lines {
 		if l.ceiling == nil {
 			continue
 		}
 		py := y.at(*l.ceiling)
 		s.add(line(x.A, py, x.B, py, l.pen.ink, 1).dash("1 3"))
-		want = append(want, py-4)
 		text := "no size passes " + percentText(*l.ceiling)
-		if len(want) > 1 {
+		if n > 0 {
 			text += ", allowing for missing studies"
-			if c.o.narrow {
-				text = "… " + percentText(*l.ceiling) + ", allowing"
-			}
 		}
-		texts = append(texts, label(x.A+6, py, text, l.pen.ink, 10.5))
-	}
-	for i, at := range spread(want, 13, y.B-6, y.A) {
-		texts[i].Y = at
-		w := textWidth(texts[i].Text, 10.5, false)
-		s.add(rect(x.A+4, at-9, w+4, 12, inkPaper).faded(0.8), texts[i])
+		s.add(label(x.A, 11+14*float64(n), text, l.pen.ink, 11))
+		n++
 	}
 }
 

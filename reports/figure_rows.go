@@ -50,6 +50,12 @@ func (r rowPlot) draw() scene {
 		widths[i] += 16
 		cellRoom += widths[i]
 	}
+	if most := s.W - nameRoom - 120; cellRoom > most { // hostile or very long cells
+		cellRoom = most
+		for i := range widths {
+			widths[i] = cellRoom / float64(len(widths))
+		}
+	}
 	x := r.domain(nameRoom+14, s.W-cellRoom-12)
 	top, rowH := 22.0, 22.0
 	if len(r.rows) > 30 {
@@ -81,7 +87,8 @@ func (r rowPlot) draw() scene {
 		s.add(label(at, 12, h, inkSoft, 11).end())
 		for j, row := range r.rows {
 			if i < len(row.cells) {
-				e := label(at, top+rowH*(float64(j)+0.5)+4, row.cells[i], inkText, 12).end()
+				cell, _ := clipText(row.cells[i], widths[i], 12, row.bold)
+				e := label(at, top+rowH*(float64(j)+0.5)+4, cell, inkText, 12).end()
 				e.Bold = row.bold
 				s.add(e)
 			}
@@ -163,7 +170,7 @@ func (r rowPlot) domain(a, b float64) axis {
 
 func (r rowPlot) axisLine(s *scene, x axis, bottom float64) float64 {
 	s.add(line(x.A, bottom, x.B, bottom, inkFaint, 1))
-	for _, t := range r.scale.ticks(x.Lo, x.Hi, map[bool]int{false: 6, true: 4}[r.o.narrow]) {
+	for _, t := range x.thin(r.scale.ticks(x.Lo, x.Hi, map[bool]int{false: 6, true: 4}[r.o.narrow]), 11) {
 		s.add(line(x.at(t.Value), bottom, x.at(t.Value), bottom+4, inkFaint, 1), label(x.at(t.Value), bottom+17, t.Text, inkSoft, 11).middle())
 	}
 	words, right := r.scale.direction()

@@ -38,7 +38,7 @@ func ScenariosFigure(p *result.Plan, o ...FigureOption) Figure {
 	x := axis{Lo: math.Max(1, lo/1.6), Hi: hi * 1.6, A: name + 12, B: s.W - right, Log: true}
 	top, rowH := 26.0, 24.0
 	bottom := top + rowH*float64(len(p.Size.Cases)) + 4
-	for _, k := range countTicks(x.Lo, x.Hi, map[bool]int{false: 8, true: 4}[opt.narrow]) {
+	for _, k := range x.thin(countTicks(x.Lo, x.Hi, map[bool]int{false: 8, true: 4}[opt.narrow]), 11) {
 		s.add(line(x.at(k.Value), top-4, x.at(k.Value), bottom, inkLine, 1), label(x.at(k.Value), bottom+17, k.Text, inkSoft, 11).middle())
 	}
 	if c := p.Size.Chosen; c != nil {

@@ -61,7 +61,7 @@ func line(x1, y1, x2, y2 float64, stroke ink, width float64) element {
 }
 
 func rect(x, y, w, h float64, fill ink) element {
-	return element{Kind: "rect", X: x, Y: y, W: w, H: h, Fill: fill}
+	return element{Kind: "rect", X: x, Y: y, W: math.Max(0, w), H: math.Max(0, h), Fill: fill}
 }
 
 func circle(x, y, r float64, fill ink) element {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"sort"
 
 	"footing/internal/finding"
@@ -338,10 +339,14 @@ func (f *fixture) grid(n float64) *result.Grid {
 	for i := 0; i <= 24; i++ {
 		g.Effects = append(g.Effects, sign(f.mean)*float64(i)*0.04)
 	}
+	g.Effects = append(g.Effects, f.worthwhile)
 	sort.Float64s(g.Effects)
 	for i := 0; i <= 30; i++ {
 		g.Ns = append(g.Ns, int(math.Round(8*math.Pow(n*5/8, float64(i)/30))))
 	}
+	g.Ns = append(g.Ns, int(n))
+	sort.Ints(g.Ns)
+	g.Ns = slices.Compact(g.Ns)
 	for _, alpha := range []float64{0.01, 0.025, 0.05, 0.1} {
 		for _, a := range []string{"1:1", "2:1"} {
 			l := result.GridLayer{Alpha: alpha, Sides: 2, Allocation: a}

@@ -80,15 +80,15 @@ func changeText(n int) string {
 	return wholeText(n)
 }
 
-// percentText writes a share as a whole percent. What is not wholly 0 or 1 never reads as such: "< 1%", "> 99%".
+// percentText writes a share as a whole percent. What is not wholly 0 or 1 never reads as such: "<" + thinSpace + "1%", ">" + thinSpace + "99%".
 func percentText(share float64) string {
 	switch {
 	case math.IsNaN(share) || math.IsInf(share, 0):
 		return "–"
 	case share > 0 && share < 1 && fixed(100*share, 0) == "0":
-		return "< 1%"
+		return "<" + thinSpace + "1%"
 	case share > 0 && share < 1 && fixed(100*share, 0) == "100":
-		return "> 99%"
+		return ">" + thinSpace + "99%"
 	}
 	return fixed(100*share, 0) + "%"
 }
@@ -97,7 +97,7 @@ func percentText(share float64) string {
 func percentCell(share float64) string {
 	switch {
 	case share < 1 && fixed(100*share, 1) == "100.0":
-		return "> 99.9%"
+		return ">" + thinSpace + "99.9%"
 	case share >= 0.99 && share < 1:
 		return fixed(100*share, 1) + "%"
 	}

@@ -1,0 +1,243 @@
+package reports
+
+import (
+	"fmt"
+	"strings"
+
+	"footing/plan/result"
+)
+
+// evidence writes what the studies say.
+func (w writer) evidence() *section {
+	pool := w.p.Pool
+	if pool == nil {
+		return nil
+	}
+	s := &section{ID: "evidence", Title: "What the studies say", Lead: w.evidenceLead()}
+	forest := block{Margin: []note{w.poolNote()}}
+	wide, narrow := ForestFigures(w.p), ForestFigures(w.p, Narrow())
+	for i := range wide {
+		v, missing := pair(wide[i], narrow[i])
+		if missing != "" {
+			forest.Missing = missing
+			continue
+		}
+		forest.Figures = append(forest.Figures, v)
+	}
+	if pool.Prediction.Why != "" {
+		forest.Margin = append(forest.Margin, note{"Next effect", upperFirst(pool.Prediction.Why)})
+	}
+	s.Blocks = append(s.Blocks, forest)
+	if len(pool.Sentences) > 0 {
+		s.Blocks = append(s.Blocks, block{List: pool.Sentences})
+	}
+	s.Blocks = append(s.Blocks, w.heterogeneity())
+	if left := w.leftOut(); left != nil {
+		s.Blocks = append(s.Blocks, *left)
+	}
+	if len(pool.Influence) > 0 {
+		b := w.figure(InfluenceFigure, note{"Leaving out", "Each study in turn, everything else as planned. Where a study moves the plan, look at its row first."})
+		b.Heading = "The plan without each study"
+		s.Blocks = append(s.Blocks, b)
+	}
+	if len(pool.Estimators) > 0 {
+		s.Blocks = append(s.Blocks, w.estimators())
+	}
+	return s
+}
+
+func (w writer) evidenceLead() string {
+	pool := w.p.Pool
+	text := fmt.Sprintf("%s %s", countWord(pool.K), plural(pool.K, "study", "studies"))
+	if pool.Participants != nil {
+		text += ", " + groupDigits(fixed(*pool.Participants, 0)) + " people"
+	}
+	e := pool.Random.Estimate
+	if e == nil {
+		why := pool.Random.Why
+		if why == "" {
+			why = "nothing could be pooled"
+		}
+		return text + ": " + why + "."
+	}
+	text += ": on average " + w.scale.phrase(*e)
+	if w.scale.Favours != "" {
+		side := "towards"
+		if (*e > w.scale.NoEffect) != w.scale.HigherBetter {
+			side = "away from"
+		}
+		text += ", " + side + " ‘" + clipRunes(w.scale.Favours, 60) + "’"
+	}
+	if i2 := pool.Heterogeneity.ISquared; i2 != nil && pool.K > 1 {
+		switch {
+		case *i2 >= 0.5:
+			text += ", and by different amounts in different places"
+		case *i2 >= 0.25:
+			text += ", and by somewhat different amounts in different places"
+		default:
+			text += "; they differ little more than chance would have them"
+		}
+	}
+	return text + "."
+}
+
+// poolNote is the margin of the forest plot: model, interval, spread.
+func (w writer) poolNote() note {
+	pool := w.p.Pool
+	text := words(pool.Random.Method)
+	if i := pool.Random.Interval; i != nil {
+		text += "; interval " + words(i.Method)
+	}
+	if df := pool.Random.DF; df != nil {
+		text += ", t with " + strings.TrimSuffix(fixed(*df, 1), ".0") + " df"
+	}
+	text += "."
+	if t := pool.Heterogeneity.TauSquared; t != nil {
+		text += " τ² is " + fixed(*t, 3) + "."
+	}
+	if e := pool.Common.Estimate; e != nil {
+		text += " Common effect: " + w.scale.text(*e) + "."
+	}
+	return note{"Pooled", text}
+}
+
+// words writes a token of the plan file as words.
+func words(token string) string {
+	named := map[string]string{"dersimonian-laird": "DerSimonian-Laird", "hartung-knapp": "Hartung-Knapp", "hartung-knapp-floored": "Hartung-Knapp, floored",
+		"paule-mandel": "Paule-Mandel", "restricted-maximum-likelihood": "REML", "maximum-likelihood": "maximum likelihood", "henmi-copas": "Henmi-Copas", "hunter-schmidt": "Hunter-Schmidt",
+		"sidik-jonkman": "Sidik-Jonkman", "hedges": "Hedges", "student-t": "Student t", "q-profile": "Q-profile"}
+	if s, ok := named[token]; ok {
+		return s
+	}
+	return strings.ReplaceAll(token, "-", " ")
+}
+
+// heterogeneity is the table of how far the studies differ, with the two models.
+func (w writer) heterogeneity() block {
+	pool := w.p.Pool
+	h := pool.Heterogeneity
+	t := &tableView{Caption: "How far the studies differ, and the two models", Head: []string{"", "value", "interval", "meaning"}, Text: 1}
+	add := func(name, value, interval, meaning string) {
+		t.Rows = append(t.Rows, tableRow{Cells: []string{name, value, interval, meaning}})
+	}
+	model := func(name string, m result.Pooled, meaning string) {
+		if m.Estimate == nil {
+			if m.Why != "" {
+				add(name, "–", "–", m.Why)
+			}
+			return
+		}
+		interval := "–"
+		if i := m.Interval; i != nil {
+			interval = w.scale.interval(i.Lower, i.Upper)
+		}
+		if m.P != nil {
+			meaning += ", p " + pEquals(*m.P)
+		}
+		add(name, w.scale.text(*m.Estimate), interval, meaning)
+	}
+	model("random effects", pool.Random, "mean of true effects that differ: used in this plan")
+	model("common effect", pool.Common, "one true effect for all, if the studies did not differ")
+	if pool.MantelHaenszel != nil {
+		model("Mantel-Haenszel", *pool.MantelHaenszel, "common effect from the counts")
+	}
+	if pool.Peto != nil {
+		model("Peto", *pool.Peto, "common effect from the counts, for rare events")
+	}
+	if i := pool.Prediction.Interval; i != nil {
+		add("next true effect", "–", w.scale.interval(i.Lower, i.Upper), percentText(i.Level)+" prediction interval: the true effect in a new setting; an observed result scatters wider")
+	} else if pool.Prediction.Why != "" {
+		add("next true effect", "–", "–", pool.Prediction.Why)
+	}
+	percentInterval := func(i *result.Interval) string {
+		if i == nil {
+			return "–"
+		}
+		return percentText(i.Lower) + " to " + percentText(i.Upper)
+	}
+	if h.ISquared != nil {
+		add("I²", percentText(*h.ISquared), percentInterval(h.ISquaredInterval), "share of the scatter that is more than chance")
+	}
+	if h.TauSquared != nil {
+		interval := "–"
+		if i := h.TauSquaredInterval; i != nil {
+			interval = fixed(i.Lower, 3) + " to " + fixed(i.Upper, 3)
+		}
+		meaning := "variance of the true effects"
+		if h.Truncated {
+			meaning += ", cut at 0"
+		}
+		add("τ²", fixed(*h.TauSquared, 3), interval, meaning)
+	}
+	if h.Tau != nil {
+		add("τ", fixed(*h.Tau, 2), "–", "standard deviation of the true effects")
+	}
+	if h.Q != nil && h.P != nil {
+		add("Q", fixed(*h.Q, 1), "–", fmt.Sprintf("against %d df, p %s", h.DF, pEquals(*h.P)))
+	}
+	b := block{Table: t, Class: "last-words"}
+	if pool.K < 10 {
+		b.Margin = []note{{"Few studies", "With fewer than ten, I² and τ² are poorly known: read their intervals."}}
+	}
+	if h.Why != "" {
+		b.Margin = append(b.Margin, note{"", upperFirst(h.Why)})
+	}
+	return b
+}
+
+// pEquals writes "= .043" or "< .001".
+func pEquals(p float64) string {
+	s := pText(p)
+	if strings.HasPrefix(s, "<") || strings.HasPrefix(s, ">") {
+		return s
+	}
+	return "= " + s
+}
+
+func (w writer) leftOut() *block {
+	t := &tableView{Caption: "Rows that are not in the mean", Head: []string{"study", "sheet row", "why"}, Text: 1}
+	for _, s := range w.p.Pool.Studies {
+		if !s.Used {
+			t.Rows = append(t.Rows, tableRow{Cells: []string{s.Study, fmt.Sprint(s.Row), s.Why}})
+		}
+	}
+	if len(t.Rows) == 0 {
+		return nil
+	}
+	return &block{Table: t, Class: "last-words"}
+}
+
+// estimators is the folded table of every estimate of the spread and what follows from it.
+func (w writer) estimators() block {
+	t := &tableView{Caption: "Every estimate of τ², and the mean under it", Head: []string{"estimator", "τ²", "I²", "mean", "interval", "by"}, Text: 1, Wide: true}
+	for _, e := range w.p.Pool.Estimators {
+		tau, i2 := "–", "–"
+		if e.TauSquared != nil {
+			tau = fixed(*e.TauSquared, 3)
+		}
+		if e.ISquared != nil {
+			i2 = percentText(*e.ISquared)
+		}
+		name := words(e.Name)
+		if e.TauSquared == nil && e.Why != "" {
+			name += ": " + e.Why
+		} else if !e.Converged {
+			name += " (did not converge)"
+		}
+		if len(e.Intervals) == 0 {
+			t.Rows = append(t.Rows, tableRow{Cells: []string{name, tau, i2, w.scale.number(e.Estimate), "–", "–"}})
+		}
+		for j, i := range e.Intervals {
+			interval := "–"
+			if i.Lower != nil && i.Upper != nil {
+				interval = w.scale.interval(*i.Lower, *i.Upper)
+			}
+			cells := []string{"", "", "", "", interval, words(i.Method)}
+			if j == 0 {
+				cells[0], cells[1], cells[2], cells[3] = name, tau, i2, w.scale.number(e.Estimate)
+			}
+			t.Rows = append(t.Rows, tableRow{Cells: cells})
+		}
+	}
+	return block{Table: t, Folded: "The mean under every estimator of τ² and every interval", Class: "last-words"}
+}
