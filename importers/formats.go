@@ -13,6 +13,20 @@ type look struct {
 	decimals      int
 }
 
+// apply gives a stored number its kind and decimals.
+func (l look) apply(c *cell, d1904 bool) {
+	switch {
+	case l.date:
+		if iso, ok := serialDate(c.text, d1904); ok {
+			c.kind, c.text = dateCell, iso
+		}
+	case l.percent:
+		c.kind = percentCell
+	case l.decimals > int(c.decimals) && c.decimals >= 0:
+		c.decimals = int16(l.decimals)
+	}
+}
+
 // lookOf reads a number format: its built-in number (ECMA-376 part 1, 18.8.30) or its code.
 func lookOf(id int, code string) look {
 	if code == "" {

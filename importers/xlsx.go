@@ -283,16 +283,7 @@ func (b *book) numeric(c *cell, style int32) {
 	}
 	c.kind = numberCell
 	c.decimals = storedDecimals(c.text)
-	switch {
-	case l.date:
-		if iso, ok := serialDate(c.text, b.d1904); ok {
-			c.kind, c.text = dateCell, iso
-		}
-	case l.percent:
-		c.kind = percentCell
-	case l.decimals > int(c.decimals) && c.decimals >= 0:
-		c.decimals = int16(l.decimals)
-	}
+	l.apply(c, b.d1904)
 }
 
 // look asks the library for the number format of a style.
