@@ -1,0 +1,156 @@
+package plan
+
+import (
+	"fmt"
+	"math"
+
+	"footing/importers"
+	"footing/internal/num"
+	"footing/meta/effect"
+	"footing/plan/result"
+)
+
+// dataClass is a kind of figures that a record can hold, and the scale that it leads to when the plan names none.
+type dataClass struct {
+	scale effect.Scale
+	words string
+	held  func(*effect.Reported) bool
+}
+
+func given(fs ...effect.Figure) bool {
+	for _, f := range fs {
+		if !f.Given {
+			return false
+		}
+	}
+	return true
+}
+
+func some(fs ...effect.Figure) bool {
+	for _, f := range fs {
+		if f.Given {
+			return true
+		}
+	}
+	return false
+}
+
+// dataClasses stand in order of preference: counts, then means, then printed effects, then test statistics.
+var dataClasses = []dataClass{
+	{effect.LogOddsRatio, "counts in two groups", func(r *effect.Reported) bool {
+		return some(r.Treatment.Events, r.Treatment.Proportion) && some(r.Control.Events, r.Control.Proportion) && given(r.Treatment.N, r.Control.N)
+	}},
+	{effect.LogRateRatio, "events and person-time in two groups", func(r *effect.Reported) bool {
+		return given(r.Treatment.PersonTime, r.Control.PersonTime) && some(r.Treatment.Events, r.Treatment.Rate)
+	}},
+	{effect.LogHazardRatio, "log-rank figures", func(r *effect.Reported) bool {
+		return given(r.ObservedMinusExpected, r.LogRankVariance) || given(r.LogRank, r.EventsTotal)
+	}},
+	{effect.StandardizedMeanDifference, "means or medians in two groups", func(r *effect.Reported) bool {
+		return some(r.Treatment.Mean, r.Treatment.Median, r.Treatment.ChangeMean) && some(r.Control.Mean, r.Control.Median, r.Control.ChangeMean)
+	}},
+	{effect.MeanDifference, "mean differences", func(r *effect.Reported) bool {
+		return r.DifferenceMean.Given && some(r.DifferenceSE, r.DifferenceLower, r.DifferenceSD)
+	}},
+	{effect.FisherZ, "correlations", func(r *effect.Reported) bool { return r.R.Given && !r.PointBiserial }},
+	{effect.AsGiven, "estimates", func(r *effect.Reported) bool { return r.Estimate.Given || r.CILower.Given && r.CIUpper.Given }},
+	{effect.StandardizedMeanDifference, "test statistics", func(r *effect.Reported) bool {
+		return some(r.T, r.F, r.P, r.R, r.EtaSquared, r.Beta)
+	}},
+	{effect.LogitProportion, "counts in a single group", func(r *effect.Reported) bool {
+		return given(r.Treatment.N) && some(r.Treatment.Events, r.Treatment.Proportion) && !some(r.Control.N, r.Control.Events)
+	}},
+	{effect.Mean, "means of a single group", func(r *effect.Reported) bool { return r.Treatment.Mean.Given && !some(r.Control.Mean, r.Control.N) }},
+	{effect.LogRate, "rates of a single group", func(r *effect.Reported) bool {
+		return given(r.Treatment.PersonTime) && some(r.Treatment.Events, r.Treatment.Rate)
+	}},
+	{effect.ICC, "intracluster correlations", func(r *effect.Reported) bool { return r.ICC.Given }},
+	{effect.CronbachAlpha, "Cronbach alphas", func(r *effect.Reported) bool { return r.Alpha.Given }},
+}
+
+// chooseScale takes the plan's scale, else the one that most rows lead to by what they hold; of equals the one that
+// stands first in dataClasses.
+func (r *evidenceReader) chooseScale() (effect.Scale, error) {
+	if r.file.Pool.Scale != "" {
+		return parseScale(r.file)
+	}
+	best, most := -1, 0
+	for k, c := range dataClasses {
+		n := 0
+		for i := range r.sheet.Records {
+			if c.held(&r.sheet.Records[i].Reported) {
+				n++
+			}
+		}
+		if n > most {
+			best, most = k, n
+		}
+	}
+	if best < 0 {
+		return effect.AsGiven, nil
+	}
+	c := dataClasses[best]
+	scale := c.scale
+	if scale == effect.AsGiven {
+		scale = r.namedScale()
+	}
+	r.sayScale(c, scale, most)
+	return scale, nil
+}
+
+// namedScale is the scale that the estimates themselves name, where they agree.
+func (r *evidenceReader) namedScale() effect.Scale {
+	found := effect.AsGiven
+	for i := range r.sheet.Records {
+		rep := &r.sheet.Records[i].Reported
+		if !rep.Estimate.Given && !rep.CILower.Given || rep.EstimateScale == "" {
+			continue
+		}
+		if found != effect.AsGiven && found != rep.EstimateScale {
+			return effect.AsGiven
+		}
+		found = rep.EstimateScale
+	}
+	return found
+}
+
+func (r *evidenceReader) sayScale(c dataClass, scale effect.Scale, rows int) {
+	if scale == effect.AsGiven {
+		r.note("scale-as-given", "the estimates are pooled as they are given; nothing says which scale they have", "name it in pool: scale:")
+		return
+	}
+	r.note("scale-chosen", fmt.Sprintf("the plan names no scale; %d of %d rows hold %s, so they are pooled as %s", rows, len(r.sheet.Records), c.words, scale), "name another in pool: scale: if that is not meant")
+}
+
+// fillEstimate puts the estimate into the study's record.
+func (r *evidenceReader) fillEstimate(st *result.Study, e *effect.Estimate) {
+	value, variance := e.Value, e.Variance
+	se := math.Sqrt(variance)
+	st.Estimate, st.Variance, st.StandardError = &value, &variance, &se
+	level := 0.95
+	if r.file.Pool.Level != nil {
+		level = *r.file.Pool.Level
+	}
+	z := num.NormalQuantileUpper((1 - level) / 2)
+	st.Interval = &result.Interval{Level: level, Lower: value - z*se, Upper: value + z*se, Method: "normal"}
+	st.Shown = shownOf(r.scale, value, st.Interval.Lower, st.Interval.Upper)
+	st.Route, st.Formula, st.Flipped = e.Route, e.Formula, e.Flipped
+	st.Notes = append(st.Notes, e.Notes...)
+	if e.Cells != nil {
+		st.From = e.Cells
+	}
+	if e.Table != nil {
+		st.Counts = &result.Counts{EventsTreatment: e.Table.EventsTreatment, TotalTreatment: e.Table.TotalTreatment, EventsControl: e.Table.EventsControl, TotalControl: e.Table.TotalControl}
+	}
+	for k, n := range []**float64{&st.NTreatment, &st.NControl} {
+		if *n == nil && e.N[k] > 0 {
+			v := e.N[k]
+			*n = &v
+		}
+	}
+}
+
+// compute turns one record into an estimate.
+func (r *evidenceReader) compute(rec *importers.Record) outcome {
+	return outcome{why: "no figure in the row leads to an estimate"}
+}
