@@ -61,13 +61,15 @@ func checkNoncentralT(t, df, delta float64) {
 	}
 }
 
-// expExcess is (e^(2v) - 1)/2 - v, with its digits kept near v = 0: v^2 + 2 v^3/3 + v^4/3 + ...
+// expExcess is (e^(2v) - 1)/2 - v, with its digits kept near v = 0 by its series, the sum of 2^(k-1) v^k / k! from k = 2.
 func expExcess(v float64) float64 {
-	if math.Abs(v) > 0.25 {
+	if v > 0.25 || v < -0.25 {
 		return math.Expm1(2*v)/2 - v
 	}
-	x := 2 * v
-	return x * x / 4 * (1 + x/3*(1+x/4*(1+x/5*(1+x/6*(1+x/7*(1+x/8*(1+x/9*(1+x/10*(1+x/11*(1+x/12*(1+x/13)))))))))))
+	if v < 0.02 && v > -0.02 {
+		return v * v * (1 + v*(2.0/3+v*(1.0/3+v*(2.0/15+v*(2.0/45+v*(4.0/315+v*(1.0/315)))))))
+	}
+	return v * v * (2.0/2 + v*(4.0/6+v*(8.0/24+v*(16.0/120+v*(32.0/720+v*(64.0/5040+v*(128.0/40320+v*(256.0/362880+v*(512.0/3628800+v*(1024.0/39916800+v*(2048.0/479001600+v*(4096.0/6227020800+v*(8192.0/87178291200+v*(16384.0/1307674368000+v*(32768.0/20922789888000+v*(65536.0/355687428096000))))))))))))))))
 }
 
 // chiMixture is the integrand: log density of v = log S is constant - df (expExcess(v)), against the normal tail.
@@ -85,6 +87,9 @@ func (m chiMixture) logTail(z float64) float64 {
 	if m.upper {
 		z = -z
 	}
+	if z > 8.5 {
+		return 0
+	}
 	if z > -37 {
 		return math.Log(NormalCDF(z))
 	}
@@ -92,9 +97,9 @@ func (m chiMixture) logTail(z float64) float64 {
 	return -z*z/2 - math.Log(-z*math.Sqrt(2*math.Pi)) - 1/(z*z)
 }
 
-// at is the integrand over e^shift.
-func (m chiMixture) at(v, shift float64) float64 {
-	z := m.t*math.Exp(v) - m.delta
+// at is the integrand over e^shift at v, with ts = t e^v.
+func (m chiMixture) at(v, ts, shift float64) float64 {
+	z := ts - m.delta
 	if m.upper {
 		z = -z
 	}
@@ -108,73 +113,69 @@ func (m chiMixture) at(v, shift float64) float64 {
 	return e * NormalCDF(z)
 }
 
-// mixOverChi sums the trapezoidal rule outward from the integrand's peak.
+// mixOverChi sums the trapezoidal rule outward from near the integrand's peak.
 func mixOverChi(t, df, delta float64, upper bool) float64 {
 	m := chiMixture{t: t, df: df, delta: delta, upper: upper}
-	peak := m.peak()
-	shift := m.logAt(peak)
-	h := chiStep(df, t*math.Exp(peak), delta)
-	sum := m.at(peak, shift)
-	sum += m.walk(peak, h, shift, sum)
-	sum += m.walk(peak, -h, shift, sum)
-	// log of the density's constant: 2 (df/2)^(df/2) e^(-df/2) / Gamma(df/2) = sqrt(df/pi) / exp(stirlingError(df/2))
+	from, shift := m.start()
+	h := chiStep(df, math.Max(t*math.Exp(from), math.Abs(delta)))
+	sum := 1.0
+	sum += m.walk(from, h, shift, sum)
+	sum += m.walk(from, -h, shift, sum)
+	// The density's constant over e^shift: 2 (df/2)^(df/2) e^(-df/2) / Gamma(df/2) = sqrt(df/pi) / exp(stirlingError(df/2)).
 	front := math.Sqrt(df/math.Pi) * h * math.Exp(shift-stirlingError(df/2))
 	return math.Min(1, front*sum)
 }
 
 func (m chiMixture) walk(from, h, shift, enough float64) float64 {
 	sum := 0.0
+	ts := m.t * math.Exp(from)
+	ratio := math.Exp(h)
 	for i := 1.0; i < 1e6; i++ {
-		f := m.at(from+i*h, shift)
+		v := from + i*h
+		// Where t s is small the rounding of a running product does no harm; elsewhere each node has its own exponential.
+		if ts *= ratio; ts > 8 {
+			ts = m.t * math.Exp(v)
+		}
+		f := m.at(v, ts, shift)
 		sum += f
-		if f < 1e-17*(sum+enough) {
+		if f < 2e-17*(sum+enough) {
 			break
 		}
 	}
 	return sum
 }
 
-// peak finds the v at which the integrand is largest, by climbing from the better of two starts: the peak of
-// the density alone, and the peak where the normal tail acts as a normal density.
-func (m chiMixture) peak() float64 {
-	v := 0.0
+// start is a v near the integrand's peak: where the density alone peaks, or where the normal tail acts as a normal density, whichever is
+// higher. walk climbs the rest of the way.
+func (m chiMixture) start() (v, logAt float64) {
+	logAt = m.logAt(0)
 	a, b := m.t*m.delta, m.df+m.t*m.t
-	if root := (a + math.Sqrt(a*a+4*m.df*b)) / (2 * b); root > 0 {
+	root := (a + math.Sqrt(a*a+4*m.df*b)) / (2 * b)
+	if root > 0 {
 		w := math.Log(root)
-		if m.logAt(w) > m.logAt(v) {
-			v = w
+		if l := m.logAt(w); l > logAt {
+			return w, l
 		}
 	}
-	step := 0.5 / math.Sqrt(2*m.df+m.t*m.t+1)
-	best := m.logAt(v)
-	for i := 0; i < 400; i++ {
-		moved := false
-		for _, d := range [2]float64{step, -step} {
-			for {
-				next := m.logAt(v + d)
-				if !(next > best) {
-					break
-				}
-				v, best, moved = v+d, next, true
-				d *= 2
-			}
-		}
-		if !moved {
-			break
-		}
-	}
-	return v
+	return 0, logAt
 }
 
-// chiStep is the step of the trapezoidal rule: the integrand is analytic in a strip around the real line; the step makes the error
-// exp(-2 pi y/h), less what the integrand grows at imaginary distance y, about 1e-16.
-func chiStep(df, ts, delta float64) float64 {
+// strip holds imaginary distances y and half the growth -log cos 2y of the chi density there.
+var strip = func() (table [13][2]float64) {
+	for i, y := range [13]float64{0.02, 0.04, 0.07, 0.1, 0.15, 0.2, 0.26, 0.33, 0.4, 0.48, 0.56, 0.64, 0.7} {
+		table[i] = [2]float64{y, -math.Log(math.Cos(2*y)) / 2}
+	}
+	return table
+}()
+
+// chiStep is the step of the trapezoidal rule. The integrand is analytic in a strip around the real line; at imaginary distance y the rule's
+// error is exp(-2 pi y/h) times what the integrand has grown there, and the widest h that makes it 1e-15 is taken.
+func chiStep(df, slope float64) float64 {
 	best := 0.0
-	slope := math.Max(math.Abs(ts), math.Abs(delta)) // of the normal tail's argument in v
-	for _, y := range [...]float64{0.02, 0.04, 0.07, 0.1, 0.15, 0.2, 0.26, 0.33, 0.4, 0.48, 0.56, 0.64, 0.7} {
-		growth := -df / 2 * math.Log(math.Cos(2*y))
-		growth += slope * slope * y * y / 2
-		if h := 2 * math.Pi * y / (36 + growth); h > best {
+	for _, s := range strip {
+		y := s[0]
+		growth := df*s[1] + slope*slope*y*y/2
+		if h := 2 * math.Pi * y / (34.5 + growth); h > best {
 			best = h
 		}
 	}
@@ -203,7 +204,7 @@ func NoncentralTPDF(t, df, delta float64) float64 {
 	}
 	peak := math.Log(s0)
 	shift := at(peak)
-	h := chiStep(df, t*s0, delta)
+	h := chiStep(df, math.Max(t*s0, math.Abs(delta)))
 	sum := 1.0
 	for _, d := range [2]float64{h, -h} {
 		for i := 1.0; i < 1e6; i++ {

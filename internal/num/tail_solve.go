@@ -27,8 +27,8 @@ func solveTail(lower, upper, start float64, tails func(v float64) (lower, upper,
 		if math.IsNaN(next) || next <= lo || next >= hi || math.Abs(step) > 30 {
 			next = fallback(v, miss, lo, hi)
 		}
-		if math.Abs(next-v) <= 4e-16*(1+math.Abs(v)) || math.Abs(miss) < 2e-16 {
-			return next
+		if math.Abs(next-v) <= 1e-9 {
+			return next // Newton's error is of the order of the step squared
 		}
 		v = next
 	}
