@@ -42,8 +42,9 @@ func (b barPlot) draw() scene {
 	}
 	name = math.Min(name, 200)
 	columns, detail := b.columns, b.detail
-	if b.o.narrow {
-		name = math.Min(name, 120)
+	rowH := 24.0
+	if b.o.narrow { // the name stands above its bar
+		name, rowH = 0, 40
 		if len(columns) > 1 {
 			columns = columns[1:2]
 		}
@@ -85,7 +86,7 @@ func (b barPlot) draw() scene {
 	}
 	pad := math.Max(0.06*(x.Hi-x.Lo), 1)
 	x.Lo, x.Hi = math.Max(0, x.Lo-pad), x.Hi+pad
-	top, rowH := 26.0, 24.0
+	top := 26.0
 	bottom := top + rowH*float64(len(b.rows)) + 4
 	px := x.at(b.planned)
 	s.add(label(math.Min(math.Max(px, textWidth(b.head, 12, true)/2), x.B), 14, b.head, inkPlan, 12).bold().middle())
@@ -96,7 +97,7 @@ func (b barPlot) draw() scene {
 		s.add(label(at, 14, short, inkSoft, 11).end())
 		for j, r := range b.rows {
 			cell, _ := clipText(b.cell(r, i, skip), widths[i], 12, i == 0 || r.warning)
-			e := label(at, top+rowH*(float64(j)+0.5)+4, cell, inkText, 12).end()
+			e := label(at, b.baseline(top, rowH, j), cell, inkText, 12).end()
 			e.Bold = i == 0 || r.warning
 			s.add(e)
 		}
@@ -118,6 +119,15 @@ func (b barPlot) draw() scene {
 	return s
 }
 
+// baseline is where the texts of a row stand.
+func (b barPlot) baseline(top, rowH float64, row int) float64 {
+	y := top + rowH*(float64(row)+0.5) + 4
+	if b.o.narrow {
+		y += 8
+	}
+	return y
+}
+
 func (b barPlot) cell(r barRow, i, skip int) string {
 	if i+skip < len(r.cells) {
 		return r.cells[i+skip]
@@ -126,7 +136,12 @@ func (b barPlot) cell(r barRow, i, skip int) string {
 }
 
 func (b barPlot) drawRow(s *scene, x axis, r barRow, y, name, detailRoom float64) {
-	s.add(clipped(0, y+4, r.name, name, inkText, 12, false))
+	if b.o.narrow {
+		s.add(clipped(0, y-8, r.name, s.W, inkText, 12, false))
+		y += 8
+	} else {
+		s.add(clipped(0, y+4, r.name, name, inkText, 12, false))
+	}
 	if r.why != "" {
 		text, _ := clipText(r.why, x.B-x.A, 11, false)
 		s.add(label(x.A, y+4, text, inkSoft, 11))

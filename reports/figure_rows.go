@@ -33,8 +33,12 @@ func (r rowPlot) draw() scene {
 	}
 	nameRoom = math.Min(nameRoom, 290)
 	columns := r.columns
-	if r.o.narrow {
-		nameRoom = math.Min(nameRoom, 130)
+	top, rowH := 22.0, 22.0
+	if len(r.rows) > 30 {
+		rowH = 17
+	}
+	if r.o.narrow { // the name stands above its line
+		nameRoom, rowH = 0, 36
 		if len(columns) > 1 {
 			columns = columns[:1]
 		}
@@ -56,11 +60,7 @@ func (r rowPlot) draw() scene {
 			widths[i] = cellRoom / float64(len(widths))
 		}
 	}
-	x := r.domain(nameRoom+14, s.W-cellRoom-12)
-	top, rowH := 22.0, 22.0
-	if len(r.rows) > 30 {
-		rowH = 17
-	}
+	x := r.domain(math.Max(nameRoom+14, 24), s.W-cellRoom-12)
 	bottom := top + rowH*float64(len(r.rows)) + 4
 	if r.band[0] != r.band[1] {
 		a, b := x.cut(r.band[0]), x.cut(r.band[1])
@@ -88,7 +88,7 @@ func (r rowPlot) draw() scene {
 		for j, row := range r.rows {
 			if i < len(row.cells) {
 				cell, _ := clipText(row.cells[i], widths[i], 12, row.bold)
-				e := label(at, top+rowH*(float64(j)+0.5)+4, cell, inkText, 12).end()
+				e := label(at, r.baseline(top, rowH, j), cell, inkText, 12).end()
 				e.Bold = row.bold
 				s.add(e)
 			}
@@ -102,7 +102,12 @@ func (r rowPlot) draw() scene {
 }
 
 func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
-	s.add(clipped(0, y+4, row.name, nameRoom, inkText, 12, row.bold))
+	if r.o.narrow {
+		s.add(clipped(0, y-5, row.name, x.B, inkText, 12, row.bold))
+		y += 8
+	} else {
+		s.add(clipped(0, y+4, row.name, nameRoom, inkText, 12, row.bold))
+	}
 	if row.estimate == nil {
 		text, _ := clipText(row.why, x.B-x.A, 11, false)
 		s.add(rect(x.A, y-8, textWidth(text, 11, false)+6, 16, inkPaper), label(x.A+2, y+4, text, inkSoft, 11))
@@ -135,6 +140,15 @@ func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
 		return
 	}
 	s.add(circle(x.cut(*row.estimate), y, radius, i))
+}
+
+// baseline is where the texts of a row stand.
+func (r rowPlot) baseline(top, rowH float64, row int) float64 {
+	y := top + rowH*(float64(row)+0.5) + 4
+	if r.o.narrow {
+		y += 8
+	}
+	return y
 }
 
 // domain covers all estimates, no effect, the band, and intervals up to 0.6 of the spread beyond.

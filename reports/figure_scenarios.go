@@ -28,15 +28,15 @@ func ScenariosFigure(p *result.Plan, o ...FigureOption) Figure {
 		return emptyFigure("scenarios", title, "no scenario has a size")
 	}
 	s := scene{W: opt.width()}
-	name, right := 250.0, 70.0
-	if opt.narrow {
-		name, right = 132, 44
+	name, right, rowH := 250.0, 70.0, 24.0
+	if opt.narrow { // the name stands above its marks
+		name, right, rowH = 12, 44, 40
 	}
 	if c := p.Size.Chosen; c != nil {
 		lo, hi = math.Min(lo, float64(firstGroup(&c.N))), math.Max(hi, float64(firstGroup(&c.N)))
 	}
 	x := axis{Lo: math.Max(1, lo/1.6), Hi: hi * 1.6, A: name + 12, B: s.W - right, Log: true}
-	top, rowH := 26.0, 24.0
+	top := 26.0
 	bottom := top + rowH*float64(len(p.Size.Cases)) + 4
 	for _, k := range x.thin(countTicks(x.Lo, x.Hi, map[bool]int{false: 8, true: 4}[opt.narrow]), 11) {
 		s.add(line(x.at(k.Value), top-4, x.at(k.Value), bottom, inkLine, 1), label(x.at(k.Value), bottom+17, k.Text, inkSoft, 11).middle())
@@ -54,7 +54,12 @@ func ScenariosFigure(p *result.Plan, o ...FigureOption) Figure {
 		}
 		text := scenarioWords(p, c.Scenario) + " " + scale.text(c.Effect)
 		bold := p.Size.Chosen != nil && p.Size.Chosen.Scenario == c.Scenario
-		s.add(clipped(0, y+4, text, name, inkText, 12, bold))
+		if opt.narrow {
+			s.add(clipped(0, y-8, text, s.W, inkText, 12, bold))
+			y += 8
+		} else {
+			s.add(clipped(0, y+4, text, name, inkText, 12, bold))
+		}
 		a, b := firstGroup(c.At80), firstGroup(c.At90)
 		if a == 0 {
 			s.add(hatch(x.A, y-8, x.B-x.A, 16, 7, inkFaint).faded(0.45))

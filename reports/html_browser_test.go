@@ -24,12 +24,18 @@ import (
 type browser struct {
 	t   *testing.T
 	ctx context.Context
-	mu  sync.Mutex
-	// said holds what pages reported since the last open: console messages, exceptions, violations of the policy.
-	said []string
-	// asked holds the addresses that pages asked for since the last open.
-	asked []string
+	*heard
 }
+
+// heard is what pages reported and asked for since the last open.
+type heard struct {
+	mu    sync.Mutex
+	said  []string // console messages, exceptions, violations of the policy
+	asked []string // addresses
+}
+
+// in is the same browser for a subtest.
+func (b *browser) in(t *testing.T) *browser { return &browser{t: t, ctx: b.ctx, heard: b.heard} }
 
 // newBrowser starts a browser. Without one the test is skipped and says so, unless FOOTING_REQUIRE_BROWSER is 1.
 func newBrowser(t *testing.T) *browser {
@@ -55,7 +61,7 @@ func newBrowser(t *testing.T) *browser {
 	ctx, cancelAllocator := chromedp.NewExecAllocator(ctx, options...)
 	ctx, cancel := chromedp.NewContext(ctx)
 	t.Cleanup(func() { cancel(); cancelAllocator(); cancelTime() })
-	b := &browser{t: t, ctx: ctx}
+	b := &browser{t: t, ctx: ctx, heard: &heard{}}
 	b.check(chromedp.Listen(ctx, b.hear))
 	if _, err := chromedp.Call(ctx, cdplog.Enable, cdp.Empty{}); err != nil {
 		t.Fatal(err)

@@ -35,8 +35,20 @@ var hostile = []string{
 	strings.Repeat("long label ", 1000),
 }
 
-func TestPageInBrowser(t *testing.T) {
+// TestInBrowser opens reports in one browser.
+func TestInBrowser(t *testing.T) {
 	b := newBrowser(t)
+	for _, c := range []struct {
+		name string
+		test func(*testing.T, *browser)
+	}{{"page", testPageInBrowser}, {"figures", testFigureTextsDoNotCollide}, {"panel", testPanelReacts}, {"hostile", testHostileLabels}, {"pictures", testPictures}} {
+		t.Run(c.name, func(t *testing.T) {
+			c.test(t, b.in(t))
+		})
+	}
+}
+
+func testPageInBrowser(t *testing.T, b *browser) {
 	for _, log := range []bool{false, true} {
 		address := b.open(mustHTML(t, 12, log), 1100)
 		b.quiet(address)
@@ -57,8 +69,7 @@ func TestPageInBrowser(t *testing.T) {
 }
 
 // No text of a figure may leave its drawing or lie on another text.
-func TestFigureTextsDoNotCollide(t *testing.T) {
-	b := newBrowser(t)
+func testFigureTextsDoNotCollide(t *testing.T, b *browser) {
 	const collisions = `(() => { const bad = [];
 	for (const svg of document.querySelectorAll("figure svg")) { const f = svg.getBoundingClientRect(); if (!f.width) continue;
 	 const boxes = [...svg.querySelectorAll("text")].map(e => { const r = e.getBoundingClientRect(); const d = r.height * 0.22; return {s: e.lastChild ? e.lastChild.textContent : "", l: r.left, r: r.right, t: r.top + d, b: r.bottom - d}; });
@@ -66,20 +77,20 @@ func TestFigureTextsDoNotCollide(t *testing.T) {
 	 for (let i = 0; i < boxes.length; i++) for (let j = i + 1; j < boxes.length; j++) { const a = boxes[i], c = boxes[j];
 	  if (a.l < c.r - 1 && c.l < a.r - 1 && a.t < c.b - 1 && c.t < a.b - 1) bad.push(a.s + " | " + c.s); } }
 	return bad.join("\n"); })()`
-	for _, k := range []int{3, 12, 80} {
-		for _, log := range []bool{false, true} {
-			for _, width := range []int{1100, 390} {
-				b.open(mustHTML(t, k, log), width)
-				if bad := b.text(collisions); bad != "" {
-					t.Errorf("%d studies, log %v, width %d:\n%s", k, log, width, bad)
-				}
+	for _, c := range []struct {
+		k   int
+		log bool
+	}{{3, false}, {12, true}, {20, false}} {
+		for _, width := range []int{1100, 390} {
+			b.open(mustHTML(t, c.k, c.log), width)
+			if bad := b.text(collisions); bad != "" {
+				t.Errorf("%d studies, log %v, width %d:\n%s", c.k, c.log, width, bad)
 			}
 		}
 	}
 }
 
-func TestPanelReacts(t *testing.T) {
-	b := newBrowser(t)
+func testPanelReacts(t *testing.T, b *browser) {
 	p := inventedPlan(12, false)
 	page, err := HTML(p)
 	if err != nil {
@@ -128,8 +139,7 @@ func TestPanelReacts(t *testing.T) {
 	b.quiet(address)
 }
 
-func TestHostileLabels(t *testing.T) {
-	b := newBrowser(t)
+func testHostileLabels(t *testing.T, b *browser) {
 	p := inventedPlan(21, false)
 	for i := range p.Pool.Studies {
 		h := hostile[i%len(hostile)]
@@ -188,13 +198,12 @@ const tooWide = `(() => { const out = [], walk = document.createTreeWalker(docum
 	 if (r.getBoundingClientRect().right > innerWidth + 1 && !e.closest(".scroll, script")) out.push(e.tagName + "." + (e.className.baseVal ?? e.className) + "#" + e.id + " " + n.data.slice(0, 60)); }
 	return out.join("\n"); })()`
 
-// TestPictures writes pictures of reports into the folder that FOOTING_FIGURES names, to be looked at.
-func TestPictures(t *testing.T) {
+// testPictures writes pictures of reports into the folder that FOOTING_FIGURES names, to be looked at.
+func testPictures(t *testing.T, b *browser) {
 	dir := os.Getenv("FOOTING_FIGURES")
 	if dir == "" {
 		t.Skip("FOOTING_FIGURES names no folder")
 	}
-	b := newBrowser(t)
 	page := mustHTML(t, 12, false)
 	b.open(page, 1100)
 	b.picture(filepath.Join(dir, "page-1100.png"))

@@ -72,6 +72,9 @@ type tableView struct {
 	Wide    bool // many columns: it may scroll sideways on a small screen
 }
 
+// Short says that a table is small enough to be kept on one sheet of paper.
+func (t *tableView) Short() bool { return len(t.Rows) <= 14 }
+
 type tableRow struct {
 	Cells  []string
 	Strong bool

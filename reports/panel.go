@@ -174,6 +174,8 @@ func panelChart(p *result.Plan, g *result.Grid) (json.RawMessage, error) {
 	if n := 3 * firstGroup(&p.Size.Chosen.N); n < most {
 		most = n
 	}
+	step := niceStep(float64(most), 7)
+	most = int(math.Ceil(float64(most)/step) * step)
 	text := func(size int) *opts.AxisLabel { return &opts.AxisLabel{Color: string(inkSoft), FontSize: size} }
 	percent := text(12)
 	percent.Formatter = "{value}%"

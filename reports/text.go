@@ -52,7 +52,7 @@ func (w *textWriter) blank() { w.WriteByte('\n') }
 
 // head writes the title at the left and a remark at the right end of the line.
 func (w *textWriter) head(title, right string) {
-	title, right = termText(title), termText(right)
+	title, right = TermText(title), TermText(right)
 	title = clipColumns(title, termWidth-columnsOf(right)-2)
 	w.WriteString(strings.TrimRight(w.ink(termStrong, title)+strings.Repeat(" ", max(2, termWidth-columnsOf(title)-columnsOf(right)))+right, " "))
 	w.WriteByte('\n')
@@ -62,7 +62,7 @@ func (w *textWriter) head(title, right string) {
 func (w *textWriter) wrapped(first string, hang int, s string) {
 	room := termWidth - 2 - hang
 	lead := first + strings.Repeat(" ", max(0, hang-columnsOf(first)))
-	for i, l := range termWrap(termText(s), room) {
+	for i, l := range termWrap(TermText(s), room) {
 		if i > 0 {
 			lead = strings.Repeat(" ", hang)
 		}
@@ -125,9 +125,9 @@ func clipColumns(s string, n int) string {
 	return strings.TrimRight(cutColumns(s, n-3), " ") + "..."
 }
 
-// termText makes a text harmless on a terminal: control characters and escapes, marks that turn the reading direction
+// TermText makes a text harmless on a terminal: control characters and escapes, marks that turn the reading direction
 // around and characters without width become a visible mark; the typography of the page becomes plain.
-func termText(s string) string {
+func TermText(s string) string {
 	var b strings.Builder
 	for _, r := range s {
 		switch {
@@ -160,7 +160,7 @@ func (w *textWriter) grid(cols []textColumn, rows [][]string, marks, inks []stri
 	for j, c := range cols {
 		widths[j] = columnsOf(c.head)
 		for i := range rows {
-			rows[i][j] = termText(rows[i][j])
+			rows[i][j] = TermText(rows[i][j])
 			if c.most > 0 {
 				rows[i][j] = clipColumns(rows[i][j], c.most)
 			}
@@ -200,14 +200,14 @@ func (w *textWriter) grid(cols []textColumn, rows [][]string, marks, inks []stri
 }
 
 // termNumber writes a number of the page for a terminal.
-func termNumber(s string) string { return termText(s) }
+func termNumber(s string) string { return TermText(s) }
 
 // optional writes a figure that may not be there.
 func optional(x *float64, write func(float64) string) string {
 	if x == nil {
 		return "-"
 	}
-	return termText(write(*x))
+	return TermText(write(*x))
 }
 
 // wroteLine names the files that were written.

@@ -96,12 +96,12 @@ func (w *textWriter) rules(c *result.Comparison) {
 	if c.FrozenN != nil && (c.FrozenPower != nil || c.FrozenAssurance != nil) {
 		var parts []string
 		if c.FrozenPower != nil {
-			parts = append(parts, "power "+termText(percentText(*c.FrozenPower)))
+			parts = append(parts, "power "+TermText(percentText(*c.FrozenPower)))
 		}
 		if c.FrozenAssurance != nil {
-			parts = append(parts, "assurance "+termText(percentText(*c.FrozenAssurance)))
+			parts = append(parts, "assurance "+TermText(percentText(*c.FrozenAssurance)))
 		}
-		w.wrapped("", 0, fmt.Sprintf("The frozen size (%s analysed) under the new evidence: %s.", termText(wholeText(c.FrozenN.Total)), strings.Join(parts, ", ")))
+		w.wrapped("", 0, fmt.Sprintf("The frozen size (%s analysed) under the new evidence: %s.", TermText(wholeText(c.FrozenN.Total)), strings.Join(parts, ", ")))
 	}
 	for _, r := range c.Rules {
 		mark := "no "

@@ -46,7 +46,7 @@ func planRemark(p *result.Plan) string {
 func termGroups(n result.N) string {
 	parts := make([]string, len(n.Groups))
 	for i, g := range n.Groups {
-		parts[i] = termText(wholeText(g))
+		parts[i] = TermText(wholeText(g))
 	}
 	return strings.Join(parts, " + ")
 }
@@ -59,13 +59,13 @@ func (w *textWriter) answer(p *result.Plan) {
 	}
 	effect := ""
 	if x := termCase(&p.Size, c.Scenario); x != nil {
-		effect = " " + termText(effectText(x.Shown))
+		effect = " " + TermText(effectText(x.Shown))
 	}
 	groups := ""
 	if len(c.ToEnrol.Groups) > 1 {
 		groups = " (" + termGroups(c.ToEnrol) + ")"
 	}
-	w.line("%s", w.ink(termStrong+termPlan, fmt.Sprintf("Enrol %s%s", termText(wholeText(c.ToEnrol.Total)), groups))+fmt.Sprintf(", for %s%s.", c.Scenario, effect))
+	w.line("%s", w.ink(termStrong+termPlan, fmt.Sprintf("Enrol %s%s", TermText(wholeText(c.ToEnrol.Total)), groups))+fmt.Sprintf(", for %s%s.", c.Scenario, effect))
 	if c.ScenarioWhy != "" {
 		w.wrapped("", 0, strings.TrimRight(c.ScenarioWhy, ".")+".")
 	}
@@ -142,7 +142,7 @@ func (w *textWriter) scenarios(p *result.Plan) {
 	} else {
 		unit = "people"
 	}
-	cols := []textColumn{{head: "scenario", most: 26}, {head: "effect", right: true}, {head: unit, right: true}, {head: "to enrol", right: true}, {head: "power at " + termText(n), right: true}}
+	cols := []textColumn{{head: "scenario", most: 26}, {head: "effect", right: true}, {head: unit, right: true}, {head: "to enrol", right: true}, {head: "power at " + TermText(n), right: true}}
 	var rows [][]string
 	var marks, inks []string
 	for _, c := range s.Cases {

@@ -16,7 +16,7 @@ const forestWidth = 27
 func TextPool(p *result.Pool, o TextOptions) string {
 	w := &textWriter{o: o}
 	w.head(p.Evidence.File, fmt.Sprintf("%d %s pooled", p.K, plural(p.K, "study", "studies")))
-	w.line("%s", termText(scaleSentence(p.Scale)))
+	w.line("%s", TermText(scaleSentence(p.Scale)))
 	if len(p.Evidence.Examples) > 0 {
 		w.wrapped("", 0, "Example rows still in the sheet: "+strings.Join(p.Evidence.Examples, ", "))
 	}
@@ -33,13 +33,13 @@ func TextPool(p *result.Pool, o TextOptions) string {
 func poolShown(info result.ScaleInfo, shown *result.Shown, estimate *float64, iv *result.Interval) (string, string) {
 	switch {
 	case shown != nil && shown.Lower != nil && shown.Upper != nil:
-		return termText(effectText(shown.Estimate)), termText(effectText(*shown.Lower) + " to " + effectText(*shown.Upper))
+		return TermText(effectText(shown.Estimate)), TermText(effectText(*shown.Lower) + " to " + effectText(*shown.Upper))
 	case shown != nil:
-		return termText(effectText(shown.Estimate)), ""
+		return TermText(effectText(shown.Estimate)), ""
 	case estimate != nil && iv != nil:
-		return termText(effectText(*estimate)), termText(effectText(iv.Lower) + " to " + effectText(iv.Upper))
+		return TermText(effectText(*estimate)), TermText(effectText(iv.Lower) + " to " + effectText(iv.Upper))
 	case estimate != nil:
-		return termText(effectText(*estimate)), ""
+		return TermText(effectText(*estimate)), ""
 	}
 	return "-", ""
 }
@@ -173,7 +173,7 @@ func (w *textWriter) poolFigures(p *result.Pool) {
 	h := p.Heterogeneity
 	s := fmt.Sprintf("tau2 %s, I2 %s", optional(h.TauSquared, effectText3), optional(h.ISquared, percentText))
 	if h.Q != nil && h.P != nil {
-		s += fmt.Sprintf(", Q %s on %d df, p %s", termText(fixed(*h.Q, 2)), h.DF, termText(pText(*h.P)))
+		s += fmt.Sprintf(", Q %s on %d df, p %s", TermText(fixed(*h.Q, 2)), h.DF, TermText(pText(*h.P)))
 	}
 	if h.Why != "" {
 		s += " (" + h.Why + ")"
@@ -195,7 +195,7 @@ func optionalP(p *float64) string {
 	if p == nil {
 		return ""
 	}
-	return ", p " + termText(pText(*p))
+	return ", p " + TermText(pText(*p))
 }
 
 func (w *textWriter) smallStudy(p *result.Pool) {

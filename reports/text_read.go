@@ -8,24 +8,14 @@ import (
 	"footing/plan/result"
 )
 
-// Reading is how an evidence sheet was understood: the document of `footing read --json`.
-type Reading struct {
-	Schema   string           `json:"schema"` // "footing/read/1"
-	Tool     result.Tool      `json:"tool"`
-	Evidence result.Evidence  `json:"evidence"`
-	Scale    result.ScaleInfo `json:"scale"`
-	Studies  []result.Study   `json:"studies"`
-	Findings []result.Finding `json:"findings"`
-}
-
 // TextRead writes how each heading and row was understood, the effects and the findings.
-func TextRead(r *Reading, o TextOptions) string {
+func TextRead(r *result.Reading, o TextOptions) string {
 	w := &textWriter{o: o}
 	w.head(r.Evidence.File, fmt.Sprintf("%d %s, %d usable", r.Evidence.Rows, plural(r.Evidence.Rows, "record", "records"), r.Evidence.Used))
 	if r.Evidence.Sheet != "" {
-		w.line("sheet %s", termText(r.Evidence.Sheet))
+		w.line("sheet %s", TermText(r.Evidence.Sheet))
 	}
-	w.line("scale: %s", termText(scaleSentence(r.Scale)))
+	w.line("scale: %s", TermText(scaleSentence(r.Scale)))
 	w.blank()
 	w.line("Headings")
 	var rows [][]string
@@ -68,9 +58,9 @@ func scaleSentence(s result.ScaleInfo) string {
 func shownEffect(s result.Study) string {
 	switch {
 	case s.Shown != nil:
-		return termText(effectText(s.Shown.Estimate))
+		return TermText(effectText(s.Shown.Estimate))
 	case s.Estimate != nil:
-		return termText(effectText(*s.Estimate))
+		return TermText(effectText(*s.Estimate))
 	}
 	return "-"
 }

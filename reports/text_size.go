@@ -26,7 +26,7 @@ func TextSize(s *result.Size, o TextOptions) string {
 				row[1] = wholeText(c.N.Groups[0])
 			}
 		} else if c.Why != "" {
-			why = append(why, termText(effectText(c.Shown))+": "+c.Why)
+			why = append(why, TermText(effectText(c.Shown))+": "+c.Why)
 		}
 		if c.ToEnrol != nil {
 			row[3] = wholeText(c.ToEnrol.Total)

@@ -68,7 +68,7 @@
   };
 
   var state = Object.assign({}, data.start);
-  var most = option.xAxis[0].max;
+  var axisMost = option.xAxis[0].max, most = Math.min(axisMost, data.ns[data.ns.length - 1]);
   var range = function (id, lo, hi, step, value) {
     var e = get(id);
     e.min = lo; e.max = hi; e.step = step; e.value = value;
@@ -106,6 +106,20 @@
     return list;
   };
 
+  // How far each name at a line's end moves down so that the three stand apart; height is the plot's, in pixels.
+  var apart = function (rows, height) {
+    var ends = [0, 1, 2].filter(function (i) { return rows[i].length; }).map(function (i) {
+      return { i: i, y: (100 - rows[i][rows[i].length - 1][1]) / 100 * height };
+    }).sort(function (a, b) { return a.y - b.y || b.i - a.i; });
+    var out = [0, 0, 0, 0], floor = -Infinity;
+    ends.forEach(function (e) {
+      var y = Math.max(e.y, floor);
+      out[e.i] = y - e.y;
+      floor = y + 15;
+    });
+    return out;
+  };
+
   var draw = function () {
     var l = layer(state.alpha, state.allocation);
     var base = layer(data.start.alpha, data.start.allocation);
@@ -138,14 +152,14 @@
     o.xAxis[0].nameTextStyle = { color: css("soft"), align: "right", verticalAlign: "top", padding: [26, 0, 0, 0] };
     o.xAxis[0].nameGap = 0;
     var small = root.clientWidth < 600;
-    o.grid = [{ left: 44, right: small ? 16 : 160, top: 24, bottom: 48 }];
-    var rows = [points(base && rowAt(base, data.start.effect)), points(row), points(l.assurance), [[0, 100 * state.power], [most, 100 * state.power]]];
+    o.grid = [{ left: 44, right: small ? 16 : 110, top: 24, bottom: 48 }];
+    var rows = [points(base && rowAt(base, data.start.effect)), points(row), points(l.assurance), [[0, 100 * state.power], [axisMost, 100 * state.power]]];
+    var shift = apart(rows, 252);
     o.series.forEach(function (s, i) {
       s.data = rows[i];
       s.silent = true;
       s.emphasis = { disabled: true };
-      s.endLabel = { show: !small && i < 3 && rows[i].length > 0, formatter: "{a}", color: s.lineStyle.color, distance: 8, fontSize: 12 };
-      s.labelLayout = { moveOverlap: "shiftY" };
+      s.endLabel = { show: !small && i < 3 && rows[i].length > 0, formatter: "{a}", color: s.lineStyle.color, distance: 8, fontSize: 12, offset: [0, shift[i]] };
     });
     o.series[1].markLine = {
       silent: true, symbol: "none", animation: false,
