@@ -43,6 +43,12 @@ func (r *recordReader) figure(rec *Record, c *cell, k int, at string) {
 			"type the figure again in a cell formatted as text or as a number")
 		return
 	}
+	if strings.Contains(string(col.Meaning), " + ") {
+		if !isMissing(c.text) && !r.several(rec, c, col, at) {
+			r.sayFault(rec, c, col, at, numberNot)
+		}
+		return
+	}
 	n, fault := r.number(c, col.Meaning)
 	switch {
 	case fault == numberMissing:
@@ -50,35 +56,42 @@ func (r *recordReader) figure(rec *Record, c *cell, k int, at string) {
 	case fault == numberNot && isNotSignificant(c.text) && takesNotSignificant[col.Meaning]:
 		rec.Reported.NotSignificant = true
 		return
+	case fault == numberNot && c.kind == textCell && r.several(rec, c, col, at):
+		return
 	case fault != numberFine:
 		r.sayFault(rec, c, col, at, fault)
 		return
 	}
+	r.store(rec, col.Meaning, n, c, col, at)
+}
+
+// store keeps one number of a cell as the figure m.
+func (r *recordReader) store(rec *Record, m Meaning, n number, c *cell, col *column, at string) {
 	f := effect.Figure{Value: n.value, Given: true, Decimals: n.decimals, Bound: n.bound, Cell: at}
-	if !r.scaleFigure(&f, n, c, col) {
+	scaleFigure(&f, m, n, c, col)
+	if !r.inDomain(rec, m, &f, c, at) {
 		return
 	}
-	if !r.inDomain(rec, &f, c, col, at) {
-		return
-	}
-	if col.Meaning == Relevance {
+	if m == Relevance {
 		rec.Relevance, rec.HasRelevance = f.Value, true
 		return
 	}
 	if n.starred {
 		r.tell(finding.Note, "sign-behind-number", rec, at, c.text, fmt.Sprintf("the signs behind the number in %q were left off", shorten(c.text)), "")
 	}
-	if rest, ok := strings.CutSuffix(string(col.Meaning), "non-events"); ok {
+	if rest, ok := strings.CutSuffix(string(m), "non-events"); ok {
 		r.nonEvents(rec, rest, f)
 		return
 	}
-	if r.targets[k] != nil {
-		*r.targets[k](&rec.Reported) = f
-		if col.Meaning == N && !rec.Reported.N.Given {
+	if p := r.placeOf(m); p != nil {
+		if dst := p(&rec.Reported); !dst.Given {
+			*dst = f
+		}
+		if m == N && !rec.Reported.N.Given {
 			rec.Reported.N = f
 		}
 	}
-	switch col.Meaning {
+	switch m {
 	case "point-biserial r":
 		rec.Reported.PointBiserial = true
 	case P:
@@ -133,27 +146,32 @@ func (r *recordReader) sayFault(rec *Record, c *cell, col *column, at string, fa
 			"type it without a thousands mark, or say which decimal mark the file uses")
 	case numberRange:
 		r.tell(finding.Error, "number-out-of-range", rec, at, c.text, fmt.Sprintf("%q is larger than any number that can be computed with; the cell is not used", t), "check the figure")
+	case numberNot:
+		if spreadsheetDate(c.text) {
+			r.tell(finding.Error, "date-in-number-cell", rec, at, c.text, fmt.Sprintf("%q looks like a date that a spreadsheet program made of an entry such as 5/12 or 3-12; the cell is not used", t), "type the figure again in a cell formatted as text")
+			return
+		}
+		fallthrough
 	default:
 		r.tell(finding.Error, "text-in-number-cell", rec, at, c.text, fmt.Sprintf("%q stands where a number (%s) should; the cell is not used", t, col.Meaning), "type the number alone, or leave the cell empty if it is not reported")
 	}
 }
 
 // scaleFigure turns percentages into shares where the meaning is a share.
-func (r *recordReader) scaleFigure(f *effect.Figure, n number, c *cell, col *column) bool {
-	share := col.Meaning == CILevel || col.Meaning == Relevance || strings.HasSuffix(string(col.Meaning), "proportion")
-	percent := n.percent || col.Percent && c.kind != percentCell || col.Meaning == CILevel && f.Value > 1 || col.u.percent && c.kind != percentCell
-	if share && percent || n.percent && (col.Meaning == P || col.Meaning == "icc") {
+func scaleFigure(f *effect.Figure, m Meaning, n number, c *cell, col *column) {
+	share := m == CILevel || m == Relevance || strings.HasSuffix(string(m), "proportion")
+	percent := n.percent || col.u.percent && c.kind != percentCell || m == CILevel && f.Value > 1
+	if share && percent || n.percent && (m == P || m == "icc") {
 		f.Value /= 100
 		if f.Decimals >= 0 {
 			f.Decimals += 2
 		}
 	}
-	return true
 }
 
 // inDomain refuses values that the meaning can't have.
-func (r *recordReader) inDomain(rec *Record, f *effect.Figure, c *cell, col *column, at string) bool {
-	m, v := string(col.Meaning), f.Value
+func (r *recordReader) inDomain(rec *Record, meaning Meaning, f *effect.Figure, c *cell, at string) bool {
+	m, v := string(meaning), f.Value
 	_, tail, _ := strings.Cut(m, " ")
 	armed := strings.HasPrefix(m, "treatment ") || strings.HasPrefix(m, "control ")
 	if !armed {
@@ -178,7 +196,7 @@ func (r *recordReader) inDomain(rec *Record, f *effect.Figure, c *cell, col *col
 	case "n", "events", "non-events", "total events", "clusters", "items", "covariates", "cluster size", "person-time", "rate":
 		if v < 0 {
 			wrong = "it can't be negative"
-		} else if counts[col.Meaning] && v != math.Floor(v) {
+		} else if counts[meaning] && v != math.Floor(v) {
 			r.tell(finding.Warning, "count-not-whole", rec, at, c.text, fmt.Sprintf("%s is %s, which is no whole number", m, shorten(c.text)), "check the figure; an effective sample size may be fractional")
 		}
 	case "proportion":

@@ -142,9 +142,8 @@ func (s *columnSet) inferArm() {
 		if c.byPlan || !c.known {
 			continue
 		}
-		_, armable := armFigures[c.u.meaning]
 		switch arm, _, ok := strings.Cut(string(c.u.meaning), " "); {
-		case c.u.rest != "" && (armable || c.u.meaning == StandardError):
+		case c.u.rest != "" && c.u.meaning.ofArm():
 			rests[c.u.rest] = append(rests[c.u.rest], i)
 		case c.u.rest == "" && ok && (arm == "treatment" || arm == "control"):
 			arms[arm] = true
@@ -161,19 +160,19 @@ func (s *columnSet) inferArm() {
 		// The words must stand behind the same figures as the named arm's.
 		twins := 0
 		for _, i := range at {
+			twin := s.list[i].u.meaning.withArm(map[string]string{"treatment": "control", "control": "treatment"}[other])
 			for _, c := range s.list {
-				m := s.list[i].armMeaning()
-				if c.u.rest == "" && c.Meaning == Meaning(map[string]string{"treatment": "control", "control": "treatment"}[other])+" "+m {
+				if c.u.rest == "" && c.Meaning == twin {
 					twins++
 				}
 			}
 		}
-		if twins < len(at) || twins < 2 || len(rests) > 1 && !mostTwins(rests, rest) {
+		if twins < len(at) || twins < 2 && !strings.Contains(string(s.list[at[0]].u.meaning), " + ") || len(rests) > 1 && !mostTwins(rests, rest) {
 			continue
 		}
 		for _, i := range at {
 			c := &s.list[i]
-			c.Meaning = Meaning(other) + " " + c.armMeaning()
+			c.Meaning = c.u.meaning.withArm(other)
 			c.u.meaning = c.Meaning
 			c.Why = fmt.Sprintf("by its heading; %q taken as the name of the %s group", rest, other)
 		}
@@ -189,13 +188,6 @@ func mostTwins(rests map[string][]int, rest string) bool {
 		}
 	}
 	return true
-}
-
-func (c column) armMeaning() Meaning {
-	if c.u.meaning == StandardError {
-		return "se"
-	}
-	return c.u.meaning
 }
 
 // settleDoubles leaves each meaning to one column: the caller's choice, then the plainest heading, then the first.
@@ -217,7 +209,7 @@ func (s *columnSet) settleDoubles() {
 // meanings gives the columns by meaning.
 func (s *columnSet) find(m Meaning) *column {
 	for i := range s.list {
-		if s.list[i].Meaning == m {
+		if s.list[i].Meaning == m || slices.Contains(s.list[i].Meaning.parts(), m) {
 			return &s.list[i]
 		}
 	}

@@ -64,7 +64,7 @@ func headingWords(h string) []string {
 }
 
 var greek = strings.NewReplacer("χ", " chi ", "Χ", " chi ", "η", " eta ", "α", " alpha ", "β", " beta ", "Δ", " change ", "δ", " change ",
-	"ρ", " r ", "θ", " theta ", "µ", "u", "μ", "u", "No.", "number ", "no.", "number ", "№", "number ", "RoB", "rob", "#", "number ", "CIlo", "CI lo", "CIup", "CI up", "CIhi", "CI hi")
+	"ρ", " r ", "θ", " theta ", "µ", "u", "μ", "u", "No.", "number ", "no.", "number ", "№", "number ", "RoB", "rob", "#", "number ", "n/N", "events total", "±", " plus minus ", "+/-", " plus minus ", "CIlo", "CI lo", "CIup", "CI up", "CIhi", "CI hi")
 
 // understand reads a heading. groups are the names of the groups, treatment first, where they are known.
 func understand(typed string, groups []string) (understood, bool) {
@@ -80,10 +80,10 @@ func understand(typed string, groups []string) (understood, bool) {
 	if arm != "" {
 		fs = append(fs, feature{arm: arm})
 	}
-	if !u.compose(fs) {
-		return understood{}, false
+	if u.composeSeveral(fs, strings.ContainsAny(typed, "([/,;±+&")) || u.compose(fs) {
+		return u, true
 	}
-	return u, true
+	return understood{}, false
 }
 
 // takeGroup takes the name of a group out of the words; of two names that both stand there the longer one counts

@@ -28,6 +28,11 @@ func TestUnderstand(t *testing.T) {
 		"median treatment": "treatment median", "Q1 control": "control q1", "25th percentile treatment": "treatment q1", "Mean (ms) ": "mean", "SD [kg]": "sd", "O-E": "observed minus expected",
 		"log-rank chi-square": "log-rank chi-square", "ICC": "icc", "mean cluster size": "cluster size", "Cronbach's α": "alpha", "Pre-post correlation": "pre-post correlation",
 		"Favours": Direction, "Person-years (control)": "control person-time", "CI lower treatment": "treatment ci lower", "Treatment N": "treatment n", "Experimental group: M": "treatment mean",
+		"Mean (SD) control": "control mean + control sd", "Mean ± SD (treatment)": "treatment mean + treatment sd", "M (SE) placebo": "control mean + control se", "95% CI": "ci lower + ci upper",
+		"OR (95% CI)": "estimate + ci lower + ci upper", "Hedges g [95% CI]": "estimate + ci lower + ci upper", "Mean difference (95% CI)": "mean difference + difference ci lower + difference ci upper",
+		"Effect size (SE)": "estimate + standard error", "Median (IQR) control": "control median + control q1 + control q3", "median [range], treatment": "treatment median + treatment min + treatment max",
+		"n/N treatment": "treatment events + treatment n", "Events/total control": "control events + control n", "n (%) control": "control events + control proportion", "N, mean (SD) control": "control n + control mean + control sd",
+		"mean change (SD) treatment": "treatment change mean + treatment change sd", "Mean (95% CI) control": "control mean + control ci lower + control ci upper", "events of n, control": "control events + control n",
 		"mean t": "treatment mean", "sd c": "control sd", "MEAN-E": "treatment mean", "group 1 mean": "treatment mean", "group 2 SD": "control sd", "Arm A n": "treatment n", "Arm B n": "control n",
 	} {
 		u, ok := understand(typed, nil)
@@ -38,7 +43,7 @@ func TestUnderstand(t *testing.T) {
 }
 
 func TestUnderstandLeavesAlone(t *testing.T) {
-	for _, typed := range []string{"", "  ", "12", "Mean age", "Country", "Shift length", "42.5", "Adams 2009", "SE control estimate", "CI", "treatment", "control", "Intervention description",
+	for _, typed := range []string{"", "  ", "12", "Mean age", "Country", "Shift length", "42.5", "Adams 2009", "SE control estimate", "treatment", "control", "Intervention description",
 		"lower upper", "treatment control mean", "doi", "a long sentence about how the mean of the standard deviation was found in each study of the set"} {
 		if u, ok := understand(typed, nil); ok && u.rest == "" {
 			t.Errorf("%q was understood as %q", typed, u.meaning)

@@ -18,7 +18,8 @@ type recordReader struct {
 	g       *grid
 	set     *columnSet
 	mark    decimalMark
-	targets []place // per column of set.list
+	places  map[Meaning]place
+	single  bool // the figures without an arm are about a single group
 	byIndex map[int]int
 	last    int // last column with a heading
 	told    map[string]int
@@ -31,7 +32,8 @@ func newRecordReader(g *grid, set *columnSet) *recordReader {
 		r.last = max(r.last, c.Column)
 	}
 	r.mark = r.decideMark()
-	r.targets = set.targets()
+	r.places = map[Meaning]place{}
+	r.single = set.has("mean", "median", "proportion", "rate") || set.has("events", "non-events") && !set.has(Estimate, "observed minus expected", "log-rank chi-square", "treatment events")
 	return r
 }
 
@@ -221,19 +223,15 @@ func (r *recordReader) saySkipped(rec *Record, row *row, first string) {
 	r.tell(sev, "row-without-figures", &Record{}, row.name(), first, what+fmt.Sprintf(": %q", shorten(first)), "fill in its figures if it is a study")
 }
 
-// targets says where each column's figure goes. Plain headings (standard error, ci lower, sd, n, events) mean what the
-// other columns make of them.
-func (s *columnSet) targets() []place {
-	single := s.has("mean", "median", "proportion", "rate") || s.has("events", "non-events") && !s.has(Estimate, "observed minus expected", "log-rank chi-square", "treatment events")
-	out := make([]place, len(s.list))
-	for i := range s.list {
-		m := s.list[i].Meaning
-		if !m.isNumeric() {
-			continue
-		}
-		out[i] = s.target(m, single)
+// placeOf says where a figure goes. Plain headings (standard error, ci lower, sd, n, events) mean what the other columns
+// make of them.
+func (r *recordReader) placeOf(m Meaning) place {
+	p, ok := r.places[m]
+	if !ok {
+		p = r.set.target(m, r.single)
+		r.places[m] = p
 	}
-	return out
+	return p
 }
 
 func (s *columnSet) target(m Meaning, single bool) place {

@@ -53,9 +53,11 @@ func buildPhrases() map[string]feature {
 	base("median", "median", "mdn", "med", "medians")
 	base("q1", "q 1", "lower quartile", "first quartile", "1 st quartile", "25 th percentile", "25 percentile", "p 25", "25 th centile", "quartile 1", "iqr lower", "lower iqr", "iqr low")
 	base("q3", "q 3", "upper quartile", "third quartile", "3 rd quartile", "75 th percentile", "75 percentile", "p 75", "75 th centile", "quartile 3", "iqr upper", "upper iqr", "iqr high")
+	base("iqr", "iqr", "interquartile range", "inter quartile range", "quartiles", "q 1 q 3", "q 1 to q 3", "25 th 75 th percentile", "25 th to 75 th percentile")
+	base("range", "range", "min max", "min to max", "minimum maximum")
 	base("min", "min", "minimum", "range min", "range lower", "smallest")
 	base("max", "max", "maximum", "range max", "range upper", "largest")
-	base("events", "events", "event", "event count", "number of events", "n events", "no of events", "events n", "cases", "responders", "successes", "deaths", "number with event", "n with event", "count", "counts", "positives", "affected", "relapses", "failures")
+	base("events", "events", "event", "event count", "number of events", "n events", "no of events", "cases", "responders", "successes", "deaths", "number with event", "n with event", "count", "counts", "positives", "affected", "relapses", "failures")
 	base("nonevents", "non events", "nonevents", "no event", "no events", "without event", "non event", "non responders", "nonresponders", "non cases", "survivors", "unaffected")
 	base("proportion", "proportion", "prop", "risk", "event rate", "percentage", "prevalence", "incidence proportion", "response rate", "event proportion", "success rate")
 	add(feature{percent: true}, "%", "percent", "per cent", "pct")
@@ -139,7 +141,7 @@ func buildPhrases() map[string]feature {
 // filler are words of a heading that carry no meaning of their own.
 var filler = map[string]bool{"of": true, "the": true, "in": true, "for": true, "at": true, "group": true, "grp": true,
 	"arm": true, "condition": true, "value": true, "values": true, "reported": true, "a": true, "and": true, "per": true,
-	"with": true, "on": true, "by": true, "score": true, "scores": true, "groups": true}
+	"with": true, "on": true, "by": true, "score": true, "scores": true, "groups": true, "plus": true, "minus": true}
 
 // aside are headings that people use for columns the tool keeps as they are; no finding says that they were not understood.
 var aside = map[string]bool{"doi": true, "url": true, "link": true, "country": true, "journal": true, "design": true,
