@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"footing/importers"
+	"footing/internal/finding"
 	"footing/internal/num"
 	"footing/meta/effect"
 	"footing/plan/result"
@@ -152,5 +153,46 @@ func (r *evidenceReader) fillEstimate(st *result.Study, e *effect.Estimate) {
 
 // compute turns one record into an estimate.
 func (r *evidenceReader) compute(rec *importers.Record) outcome {
-	return outcome{why: "no figure in the row leads to an estimate"}
+	opt := effect.Options{Scale: r.scale}
+	if h := r.file.Evidence.HigherBetter; h != nil {
+		opt.LowerBetter = !*h
+	}
+	got := effect.Compute(rec.Study, rec.Reported, opt)
+	o := outcome{findings: r.locate(rec, got.Findings)}
+	if got.Best == nil {
+		o.why = "no figure in the row leads to an estimate"
+		for _, f := range got.Findings {
+			if f.Severity == finding.Error {
+				o.why = f.What
+				break
+			}
+		}
+		return o
+	}
+	e := *got.Best
+	if rec.HigherBetter != nil && *rec.HigherBetter == opt.LowerBetter {
+		e.Value, e.Flipped = -e.Value, true
+		e.Formula += "; the sign is turned, since the row's outcome runs the other way"
+	}
+	o.estimate = &e
+	return o
+}
+
+// locate gives the findings of the routes their file, sheet, and the text of the cell as typed.
+func (r *evidenceReader) locate(rec *importers.Record, fs []finding.Finding) []finding.Finding {
+	out := append([]finding.Finding{}, fs...)
+	for i := range out {
+		f := &out[i]
+		f.Study = rec.Study
+		f.Place.File, f.Place.Sheet = r.sheet.File, r.sheet.Name
+		if f.Place.Cell == "" {
+			f.Place.Cell = fmt.Sprintf("row %d", rec.Row)
+		}
+		for _, c := range rec.Cells {
+			if c.Address == f.Place.Cell {
+				f.Text = c.Text
+			}
+		}
+	}
+	return out
 }
