@@ -160,10 +160,13 @@ func (m chiMixture) start() (v, logAt float64) {
 	return 0, logAt
 }
 
-// strip holds imaginary distances y and half the growth -log cos 2y of the chi density there.
-var strip = func() (table [13][2]float64) {
+// strip holds imaginary distances y with the two ways in which the integrand grows there: the chi density by (cos 2y)^(-df/2), the normal tail,
+// whose argument has slope k in v, by exp(k^2 sin^2 y / (2 cos 2y)) at most.
+var strip = func() (table [13]struct{ y, density, tail float64 }) {
 	for i, y := range [13]float64{0.02, 0.04, 0.07, 0.1, 0.15, 0.2, 0.26, 0.33, 0.4, 0.48, 0.56, 0.64, 0.7} {
-		table[i] = [2]float64{y, -math.Log(math.Cos(2*y)) / 2}
+		table[i].y = y
+		table[i].density = -math.Log(math.Cos(2*y)) / 2
+		table[i].tail = math.Sin(y) * math.Sin(y) / (2 * math.Cos(2*y))
 	}
 	return table
 }()
@@ -173,9 +176,8 @@ var strip = func() (table [13][2]float64) {
 func chiStep(df, slope float64) float64 {
 	best := 0.0
 	for _, s := range strip {
-		y := s[0]
-		growth := df*s[1] + slope*slope*y*y/2
-		if h := 2 * math.Pi * y / (34.5 + growth); h > best {
+		growth := df*s.density + slope*slope*s.tail
+		if h := 2 * math.Pi * s.y / (34.5 + growth); h > best {
 			best = h
 		}
 	}
