@@ -76,6 +76,7 @@ var svgTemplate = sync.OnceValue(func() *template.Template {
 
 var sceneFuncs = template.FuncMap{
 	"xy":     coordinate,
+	"clean":  cleanText,
 	"colour": func(i ink) string { return lightInks[i] },
 	"alone":  func(alone bool, e element) loneElement { return loneElement{Alone: alone, element: e} },
 }

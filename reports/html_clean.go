@@ -60,7 +60,7 @@ func cleanValue(v reflect.Value) reflect.Value {
 
 // cleanText makes a text fit to be shown: control characters and what turns the reading direction of the text around
 // it become the replacement mark, line breaks and tabs become spaces, and a text that runs from right to left is
-// isolated from its surroundings.
+// isolated from its surroundings. Cleaning a clean text changes nothing.
 func cleanText(s string) string {
 	plain := true
 	for i := 0; i < len(s); i++ {
@@ -70,6 +70,13 @@ func cleanText(s string) string {
 		}
 	}
 	if plain {
+		return s
+	}
+	if isolated(s) {
+		inner := strings.TrimSuffix(strings.TrimPrefix(s, "\u2068"), "\u2069")
+		if c := cleanText(inner); isolated(c) {
+			return c
+		}
 		return s
 	}
 	var b strings.Builder
@@ -87,8 +94,13 @@ func cleanText(s string) string {
 			b.WriteRune(r)
 		}
 	}
-	if rtl {
+	if rtl { // U+2068 and U+2069: first strong isolate, and its end
 		return "\u2068" + b.String() + "\u2069"
 	}
 	return b.String()
+}
+
+// isolated says whether a text is one that cleanText has set apart already: an isolate around a text without another.
+func isolated(s string) bool {
+	return strings.HasPrefix(s, "\u2068") && strings.HasSuffix(s, "\u2069") && strings.Count(s, "\u2068") == 1 && strings.Count(s, "\u2069") == 1
 }
