@@ -246,26 +246,36 @@ func (d *decoder) unknownKey(k *yaml.Node, key string, names []string) {
 			return
 		}
 	}
-	if where := elsewhere(key); where != "" {
-		d.bad(k, "unknown-key", what, fmt.Sprintf("it belongs under %q", where))
+	if name, where := elsewhere(key); where != "" {
+		mend := fmt.Sprintf("it belongs under %q", where)
+		if name != key {
+			mend = fmt.Sprintf("did you mean %q, which belongs under %q?", name, where)
+		}
+		d.bad(k, "unknown-key", what, mend)
 		return
 	}
 	d.bad(k, "unknown-key", what, "the keys here are "+strings.Join(names, ", "))
 }
 
-// elsewhere names the section of a plan that has the key.
-func elsewhere(key string) string {
+// elsewhere names the section of a plan that has the key, or one near it.
+func elsewhere(key string) (name, section string) {
 	t := reflect.TypeFor[File]()
-	for i := 0; i < t.NumField(); i++ {
-		if f := t.Field(i); f.Type.Kind() == reflect.Struct {
-			if fields, _ := keysOf(f.Type); fields != nil {
-				if _, ok := fields[key]; ok {
-					return f.Tag.Get("yaml") + ":"
-				}
+	for _, near := range []bool{false, true} {
+		for i := 0; i < t.NumField(); i++ {
+			f := t.Field(i)
+			if f.Type.Kind() != reflect.Struct {
+				continue
+			}
+			fields, names := keysOf(f.Type)
+			if _, ok := fields[key]; ok {
+				return key, f.Tag.Get("yaml") + ":"
+			}
+			if n := importers.Nearest(key, names); near && n != "" {
+				return n, f.Tag.Get("yaml") + ":"
 			}
 		}
 	}
-	return ""
+	return "", ""
 }
 
 // keysOf lists the keys of a struct by its yaml tags, in the order of its fields.

@@ -1,6 +1,7 @@
 package plan
 
 import (
+	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
@@ -53,7 +54,7 @@ func Parse(path string, data []byte) (*File, error) {
 	d := &decoder{file: path, at: map[string]finding.Place{}}
 	f := &File{Path: path}
 	var doc yaml.Node
-	if err := yaml.Load(data, &doc); err != nil {
+	if err := yaml.Load(data, &doc); err != nil && len(bytes.TrimSpace(data)) > 0 {
 		d.syntaxProblems(err)
 		return nil, d.sorted()
 	}
@@ -68,11 +69,25 @@ func Parse(path string, data []byte) (*File, error) {
 	d.put(reflect.ValueOf(f).Elem(), root, "")
 	f.at = d.at
 	f.SHA256 = hash(data)
-	d.problems = append(d.problems, f.check()...)
+	for _, p := range f.check() {
+		if !d.told(p.Place) { // what is no number needs no word on its size
+			d.problems = append(d.problems, p)
+		}
+	}
 	if len(d.problems) > 0 {
 		return nil, d.sorted()
 	}
 	return f, nil
+}
+
+// told reports whether a problem was found at the place already.
+func (d *decoder) told(at finding.Place) bool {
+	for _, p := range d.problems {
+		if at.Line > 0 && p.Place == at {
+			return true
+		}
+	}
+	return false
 }
 
 func hash(data []byte) string {

@@ -9,16 +9,7 @@ import (
 )
 
 // Method is one entry of the manual.
-type Method struct {
-	Name      string   `json:"name"` // token of plan files and results
-	Words     string   `json:"words"`
-	Group     string   `json:"group"` // "pooling", "small studies", ...
-	Assumes   string   `json:"assumes"`
-	Misleads  string   `json:"misleads"`
-	Reference string   `json:"reference"`
-	Check     string   `json:"check"` // the published value that it is held against
-	Also      []string `json:"also"`  // other names that people look it up by
-}
+type Method = result.Method
 
 // Methods gives the whole manual, sorted by group and name.
 func Methods() []Method {
@@ -53,7 +44,14 @@ func FindMethod(name string) (m Method, near string, ok bool) {
 			names = append(names, foldName(n))
 		}
 	}
-	return Method{}, importers.Nearest(want, names), false
+	if near = importers.Nearest(want, names); near == "" {
+		for _, n := range names {
+			if want != "" && strings.Contains(n, want) {
+				return Method{}, n, false
+			}
+		}
+	}
+	return Method{}, near, false
 }
 
 func foldName(s string) string {

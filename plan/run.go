@@ -2,6 +2,7 @@ package plan
 
 import (
 	"fmt"
+	"path/filepath"
 	"sort"
 	"strings"
 
@@ -104,7 +105,7 @@ func outcomeFor(s *stages) string {
 // assemble puts the document together.
 func (s *stages) assemble(given *File, size *result.Size, assumptions []result.Assumption) *result.Plan {
 	f := s.file
-	p := &result.Plan{Schema: "footing/plan/1", Tool: ThisTool(), File: given.Path, SHA256: given.SHA256, Title: f.Title, Question: f.Question,
+	p := &result.Plan{Schema: "footing/plan/1", Tool: ThisTool(), File: filepath.Base(given.Path), SHA256: given.SHA256, Title: f.Title, Question: f.Question,
 		Date: f.Date, Seed: f.Seed, Invented: f.Invented, Justification: f.Target.Justification, Pool: s.pool, Size: *size,
 		Threats: []result.Threat{}, Cautions: []string{}, Methods: []result.MethodUsed{}}
 	p.Size.Tool = ThisTool()
@@ -121,7 +122,32 @@ func (s *stages) assemble(given *File, size *result.Size, assumptions []result.A
 	p.Threats = threats(p)
 	p.Cautions = cautions(p)
 	p.Methods = methodsUsed(p)
+	withoutFolder(p, given.Path)
 	return p
+}
+
+// withoutFolder names the plan by its own name everywhere, so that a result does not depend on where it was run from.
+func withoutFolder(p *result.Plan, path string) {
+	base := filepath.Base(path)
+	mend := func(at *result.Place) {
+		if at.File == path {
+			at.File = base
+		}
+	}
+	lists := [][]result.Finding{p.Findings, p.Size.Findings}
+	if p.Pool != nil {
+		lists = append(lists, p.Pool.Findings)
+	}
+	for _, l := range lists {
+		for i := range l {
+			mend(&l[i].Place)
+		}
+	}
+	for _, l := range [][]result.Assumption{p.Assumptions, p.Size.Study.Assumptions} {
+		for i := range l {
+			mend(&l[i].Place)
+		}
+	}
 }
 
 // withoutRepeats leaves out what the planned study lists itself.
@@ -142,24 +168,14 @@ func withoutRepeats(all, study []result.Assumption) []result.Assumption {
 
 // findings gathers those of all stages, each once, worst first.
 func (s *stages) findings(size *result.Size) []finding.Finding {
-	all := []finding.Finding{}
+	var ev, pool []finding.Finding
 	if s.ev != nil {
-		all = append(all, s.ev.Findings...)
+		ev = s.ev.Findings
 	}
 	if s.pool != nil {
-		all = append(all, s.pool.Findings...)
+		pool = s.pool.Findings
 	}
-	all = append(all, size.Findings...)
-	out, seen := []finding.Finding{}, map[string]bool{}
-	for _, x := range all {
-		key := x.ID() + "\x00" + x.What
-		if !seen[key] {
-			seen[key] = true
-			out = append(out, x)
-		}
-	}
-	finding.Sort(out)
-	return out
+	return mergeFindings(ev, pool, size.Findings)
 }
 
 // undecided counts the errors and warnings that nobody has answered.

@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"footing/internal/finding"
+	"footing/meta/effect"
 	"footing/plan/result"
 )
 
@@ -65,14 +66,7 @@ func shower(p *result.Plan) func(float64) string {
 	return func(v float64) string { return strconv.FormatFloat(shownValue(info, v), 'f', 2, 64) }
 }
 
-func shownValue(info result.ScaleInfo, v float64) float64 {
-	for _, s := range scaleOrder {
-		if string(s) == info.Name {
-			return toShown(s, v)
-		}
-	}
-	return v
-}
+func shownValue(info result.ScaleInfo, v float64) float64 { return effect.Scale(info.Name).ToShown(v) }
 
 // dependsOnEvidence: a study sized for a given effect is moved by the evidence only in its assurance.
 func (t *threatFinder) dependsOnEvidence() bool {

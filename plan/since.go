@@ -1,0 +1,154 @@
+package plan
+
+import (
+	"fmt"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"footing/internal/finding"
+	"footing/plan/edition"
+	"footing/plan/result"
+)
+
+// EvidencePath is the evidence file as the system finds it, "" where the plan names none.
+func (f *File) EvidencePath() string {
+	path := strings.TrimSpace(f.Evidence.File)
+	if path == "" || f.Path == "" || filepath.IsAbs(path) {
+		return path
+	}
+	return filepath.Join(filepath.Dir(f.Path), path)
+}
+
+// RunSince runs a plan and compares the result with the plan's last edition, where there is one.
+func RunSince(f *File) (*result.Plan, error) {
+	s, err := run(f)
+	if err != nil {
+		return nil, err
+	}
+	all, err := edition.Beside(f.Path).Read()
+	if err != nil {
+		return nil, err
+	}
+	if last := edition.Latest(all); last != nil {
+		now, err := s.edition(f)
+		if err != nil {
+			return nil, err
+		}
+		s.out.Edition = last.Number + 1
+		s.out.Since = edition.Compare(last, now, f.rules(), s.frozen(last), all)
+	}
+	return s.out, nil
+}
+
+// edition makes an edition out of the run, not yet kept.
+func (s *stages) edition(f *File) (*edition.Edition, error) {
+	text, err := readPlan(f.Path)
+	if err != nil {
+		return nil, err
+	}
+	e := edition.Of(s.out, text, Digest(f))
+	e.Date = f.Date
+	return e, nil
+}
+
+// Freeze runs a plan and keeps the run as its next edition.
+func Freeze(f *File, date, by, why string, again bool) (*edition.Edition, error) {
+	s, err := run(f)
+	if err != nil {
+		return nil, err
+	}
+	e, err := s.edition(f)
+	if err != nil {
+		return nil, err
+	}
+	e.Date, e.By, e.Why = date, by, why
+	var evidence []byte
+	if path := f.EvidencePath(); path != "" {
+		if evidence, err = os.ReadFile(path); err != nil {
+			return nil, err
+		}
+	}
+	return e, edition.Beside(f.Path).Keep(e, evidence, again)
+}
+
+// rules are the plan's revision rules; with none, its own target stands in for them.
+func (f *File) rules() edition.Rules {
+	full, _ := f.WithDefaults()
+	r := &f.ReviseWhen
+	out := edition.Rules{AssuranceBelow: r.AssuranceBelow, PowerBelow: r.PowerBelow}
+	out.NMovesBy, _ = ParseShare(r.NMovesBy)
+	out.TauGrowsBy, _ = ParseShare(r.TauGrowsBy)
+	out.EffectCrosses = r.EffectCrosses != nil && *r.EffectCrosses
+	if out.AssuranceBelow != nil || out.PowerBelow != nil || out.NMovesBy > 0 || out.TauGrowsBy > 0 || out.EffectCrosses {
+		return out
+	}
+	if full.Target.Assurance != nil {
+		out.AssuranceBelow, out.TargetOf = full.Target.Assurance, "assurance"
+		return out
+	}
+	out.PowerBelow, out.TargetOf = full.Target.Power, "power"
+	return out
+}
+
+// Compare compares edition from with edition to of a plan. from 0 is the last edition, to 0 a run now.
+func Compare(f *File, from, to int) (*result.Comparison, error) {
+	all, err := edition.Beside(f.Path).Read()
+	if err != nil {
+		return nil, err
+	}
+	if len(all) == 0 {
+		return nil, finding.Problems{{Severity: finding.Error, Kind: "no-edition", Place: finding.Place{File: f.Path},
+			What: "the plan has no edition to compare with", Mend: "keep one with footing freeze"}}
+	}
+	pick := func(n int) (*edition.Edition, error) {
+		if n < 1 || n > len(all) {
+			return nil, finding.Problems{{Severity: finding.Error, Kind: "no-edition", Place: finding.Place{File: f.Path},
+				What: fmt.Sprintf("there is no edition %d", n), Mend: fmt.Sprintf("there are editions 1 to %d", len(all))}}
+		}
+		return all[n-1], nil
+	}
+	a := edition.Latest(all)
+	if from != 0 {
+		if a, err = pick(from); err != nil {
+			return nil, err
+		}
+	}
+	if to == 0 {
+		s, err := run(f)
+		if err != nil {
+			return nil, err
+		}
+		now, err := s.edition(f)
+		if err != nil {
+			return nil, err
+		}
+		return edition.Compare(a, now, f.rules(), s.frozen(a), all), nil
+	}
+	b, err := pick(to)
+	if err != nil {
+		return nil, err
+	}
+	s, g, err := rerun(f, b)
+	if err != nil {
+		return nil, err
+	}
+	return edition.Compare(a, b, g.rules(), s.frozen(a), all), nil
+}
+
+// rerun runs an edition again from its own plan and its own copy of the evidence.
+func rerun(f *File, e *edition.Edition) (*stages, *File, error) {
+	g, err := Parse(f.Path, e.Plan.Text())
+	if err != nil {
+		return nil, nil, err
+	}
+	if e.Evidence != nil {
+		path, err := filepath.Abs(filepath.Join(edition.Beside(f.Path).Dir, e.Evidence.Copy))
+		if err != nil {
+			return nil, nil, err
+		}
+		g.Evidence.File = path
+	}
+	s, err := run(g)
+	return s, g, err
+}
