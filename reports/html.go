@@ -129,6 +129,9 @@ func newPage(p *result.Plan) (*page, error) {
 		s.Number = fmt.Sprint(len(v.Sections) + 1)
 		v.Sections = append(v.Sections, *s)
 	}
+	list := w.checklist(v.Sections)
+	list.Number = fmt.Sprint(len(v.Sections) + 1)
+	v.Sections = append(v.Sections, *list)
 	v.Answer.Contents = v.Sections
 	v.Policy = policy(string(v.Style))
 	if v.Panel != nil {

@@ -138,7 +138,7 @@ func (w writer) headings() block {
 
 // findings is everything that was noticed, with the decisions on it.
 func (w writer) findings() block {
-	t := &tableView{Caption: "Findings, and the decisions on them", Head: []string{"where", "", "what", "what mends it, or the decision"}, Text: 4, Wide: true}
+	t := &tableView{Caption: "Findings, and the decisions on them", Head: []string{"where", "kind", "what", "what mends it, or the decision"}, Text: 4, Wide: true}
 	for _, f := range w.p.Findings {
 		place := f.Place
 		if w.p.Pool != nil && place.File == w.p.Pool.Evidence.File {
@@ -215,7 +215,7 @@ func (w writer) methods() block {
 
 // origin says what to run to have all of it again.
 func (w writer) origin() block {
-	t := &tableView{Caption: "To compute it again", Head: []string{"", ""}, Text: 2}
+	t := &tableView{Caption: "To compute it again", Head: []string{"item", "value"}, Text: 2}
 	add := func(name, value string) {
 		if value != "" {
 			t.Rows = append(t.Rows, tableRow{Cells: []string{name, value}})

@@ -116,7 +116,7 @@ func words(token string) string {
 func (w writer) heterogeneity() block {
 	pool := w.p.Pool
 	h := pool.Heterogeneity
-	t := &tableView{Caption: "How far the studies differ, and the two models", Head: []string{"", "value", "interval", "meaning"}, Text: 1}
+	t := &tableView{Caption: "How far the studies differ, and the two models", Head: []string{"figure", "value", "interval", "meaning"}, Text: 1}
 	add := func(name, value, interval, meaning string) {
 		t.Rows = append(t.Rows, tableRow{Cells: []string{name, value, interval, meaning}})
 	}

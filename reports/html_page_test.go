@@ -41,7 +41,7 @@ func TestInBrowser(t *testing.T) {
 	for _, c := range []struct {
 		name string
 		test func(*testing.T, *browser)
-	}{{"page", testPageInBrowser}, {"figures", testFigureTextsDoNotCollide}, {"panel", testPanelReacts}, {"hostile", testHostileLabels}, {"pictures", testPictures}} {
+	}{{"page", testPageInBrowser}, {"figures", testFigureTextsDoNotCollide}, {"panel", testPanelReacts}, {"hostile", testHostileLabels}, {"audit", testAudit}, {"pictures", testPictures}} {
 		t.Run(c.name, func(t *testing.T) {
 			c.test(t, b.in(t))
 		})

@@ -15,7 +15,7 @@ func (w writer) since() *section {
 	}
 	s := &section{ID: "since", Title: fmt.Sprintf("Since edition %d", c.From.Number), Lead: w.sinceLead()}
 	if len(c.Figures) > 0 {
-		t := &tableView{Caption: "What moved", Head: []string{"", "then", "now"}, Text: 1}
+		t := &tableView{Caption: "What moved", Head: []string{"figure", "then", "now"}, Text: 1}
 		for _, f := range c.Figures {
 			name := f.Words
 			if name == "" {
@@ -26,7 +26,7 @@ func (w writer) since() *section {
 		s.Blocks = append(s.Blocks, block{Table: t, Margin: []note{w.editionNote()}})
 	}
 	if len(c.Rules) > 0 {
-		t := &tableView{Caption: "Revision rules", Head: []string{"rule", "", ""}, Text: 3}
+		t := &tableView{Caption: "Revision rules", Head: []string{"rule", "state", "now"}, Text: 3}
 		for _, r := range c.Rules {
 			state := "not triggered"
 			if r.Triggered {
@@ -45,7 +45,7 @@ func (w writer) since() *section {
 		}
 	}
 	if len(c.Options) > 0 {
-		t := &tableView{Caption: "Choices of the plan that changed", Head: []string{"", "then", "now"}, Text: 3}
+		t := &tableView{Caption: "Choices of the plan that changed", Head: []string{"figure", "then", "now"}, Text: 3}
 		for _, o := range c.Options {
 			t.Rows = append(t.Rows, tableRow{Cells: []string{o.Name, o.From, o.To}})
 		}

@@ -95,7 +95,7 @@ func (w writer) trailTable() block {
 // designTable is the planned study in its own words.
 func (w writer) designTable() block {
 	st := w.p.Size.Study
-	t := &tableView{Caption: "The planned study", Head: []string{"", ""}, Text: 2}
+	t := &tableView{Caption: "The planned study", Head: []string{"item", "value"}, Text: 2}
 	add := func(name, value string) {
 		if value != "" {
 			t.Rows = append(t.Rows, tableRow{Cells: []string{name, value}})
