@@ -267,7 +267,10 @@ func markEvidence(text string) decimalMark {
 		return 0
 	}
 	n := number{}
-	body, _ := splitNumber(n.takeBound(strings.TrimSpace(plainText(text))))
+	body, rest := splitNumber(n.takeBound(strings.TrimSpace(plainText(text))))
+	if _, tail, ok := takeExponent(rest); !ok || !n.takeTail(tail) {
+		return 0
+	}
 	s := strings.TrimLeft(body, "+- ")
 	points, commas := strings.Count(s, "."), strings.Count(s, ",")
 	if _, fault := mantissa(s, '.'); fault != numberFine {

@@ -23,6 +23,10 @@ type recordReader struct {
 	byIndex map[int]int
 	last    int // last column with a heading
 	told    map[string]int
+	above   struct { // the study row read last
+		label string
+		row   int
+	}
 }
 
 func newRecordReader(g *grid, set *columnSet) *recordReader {
@@ -55,6 +59,9 @@ func (r *recordReader) decideMark() decimalMark {
 			m := markEvidence(c.text)
 			if m == 0 && counts[r.set.list[i].Meaning] {
 				m = countEvidence(c.text)
+			}
+			if _, fault := parseNumber(c.text, '.'); m == 0 && fault == numberNot {
+				m = compositeMark(plainText(c.text))
 			}
 			switch m {
 			case '.':
@@ -124,6 +131,11 @@ func (r *recordReader) read(row *row) (Record, bool) {
 	if r.skip(&rec, row) {
 		return rec, false
 	}
+	if rec.Study == "" && r.above.label != "" && r.above.row == row.n-1 {
+		rec.Study = r.above.label
+		r.tell(finding.Warning, "label-from-above", &rec, row.name(), "", fmt.Sprintf("the row names no study and was taken as another row of %q above it", shorten(rec.Study)), "name the study in each row")
+	}
+	r.above.label, r.above.row = rec.Study, row.n
 	if rec.Study == "" {
 		rec.Study = row.name()
 		r.tell(finding.Warning, "no-study-label", &rec, row.name(), "", "the row has figures but no study is named", "name the study")

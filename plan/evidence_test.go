@@ -107,8 +107,8 @@ func TestScaleByWhatTheColumnsHold(t *testing.T) {
 		"log":    {"study,log HR,se\nA,-0.2,0.1\n", effect.LogHazardRatio, -0.2},
 		"r":      {"study,r,n\nA,0.5,28\n", effect.FisherZ, math.Atanh(0.5)},
 		"bare":   {"study,estimate,se\nA,0.2,0.1\n", effect.AsGiven, 0.2},
-		// g = J(38) x (11 - 10)/2 with both SDs 2; J(38) = Gamma(19)/(sqrt(19) Gamma(18.5)) = 0.98017 (Hedges 1981).
-		"means": {"study,n1,mean1,sd1,n2,mean2,sd2\nA,20,11,2,20,10,2\n", effect.StandardizedMeanDifference, 0.5 * math.Gamma(19) / (math.Sqrt(19) * math.Gamma(18.5))},
+		// g = J(38) x (11 - 10)/2 with both SDs 2; J(38) = Gamma(19)/(sqrt(19) Gamma(18.5)) (Hedges 1981), its value by mpmath.
+		"means": {"study,n1,mean1,sd1,n2,mean2,sd2\nA,20,11,2,20,10,2\n", effect.StandardizedMeanDifference, 0.5 * 0.980110402130946272803435806123},
 	} {
 		f := evidencePlan(t, c.sheet)
 		e := mustReadEvidence(t, f)

@@ -1,0 +1,132 @@
+package importers
+
+import (
+	"bytes"
+	"fmt"
+	"maps"
+	"os"
+	"path/filepath"
+	"slices"
+	"strings"
+	"testing"
+
+	"github.com/xuri/excelize/v2"
+)
+
+// The same invented studies, written down in the ways in which people write them down. Every version must give the
+// records of the first.
+const plainVersion = `study,year,n treatment,mean treatment,sd treatment,n control,mean control,sd control
+Adams,2009,24,12.3,4.5,25,10.1,4.75
+Brown,2011,1030,-11,4.2,1025,-12.5,4
+Cole,2015,18,10.25,3,17,9,3.5
+`
+
+var messyVersions = map[string]string{
+	"semicolons, decimal comma":      "Studie X;;;;;;;\nStudy;Year;n (treatment);Mean (treatment);SD (treatment);n (control);Mean (control);SD (control)\nAdams;2009;24;12,3;4,5;25;10,1;4,75\nBrown;2011;1.030;-11;4,2;1.025;-12,5;4\nCole;2015;18;10,25;3;17;9;3,5\n",
+	"tabs, other order":              "SD control\tM control\tN control\tS.D. intervention\tM intervention\tN intervention\tPublication year\tFirst author\n4.75\t10.1\t25\t4.5\t12.3\t24\t2009\tAdams\n4\t\u221212.5\t1,025\t4.2\t\u221211\t1,030\t2011\tBrown\n3.5\t9\t17\t3\t10.25\t18\t2015\tCole\n",
+	"title, blanks, footer":          "Evidence table,,,,,,,\n,,,,,,,\nextracted by hand,,,,,,,\nstudy,year,n1,mean1,sd1,n2,mean2,sd2\n\nAdams,2009,24,12.3,4.5,25,10.1,4.75\n,,,,,,,\nBrown,2011,1030,-11,4.2,1025,-12.5,4\nCole,2015,18,10.25,3,17,9,3.5\nTotal,,1072,,,1067,,\n\"Note: SDs from table 2, all of them\",,,,,,,\n",
+	"two heading rows":               ",,Treatment,,,Control,,\nStudy,Year,n,Mean,SD,n,Mean,SD\nAdams,2009,24,12.3,4.5,25,10.1,4.75\nBrown,2011,1030,-11,4.2,1025,-12.5,4\nCole,2015,18,10.25,3,17,9,3.5\n",
+	"figures above groups":           ",,n,,Mean,,SD,\nStudy,Year,Break,Control,Break,Control,Break,Control\nAdams,2009,24,25,12.3,10.1,4.5,4.75\nBrown,2011,1030,1025,-11,-12.5,4.2,4\nCole,2015,18,17,10.25,9,3,3.5\n",
+	"group named by the field":       "Study,Year,n (break),M (break),SD (break),n (no break),M (no break),SD (no break)\nAdams,2009,24,12.3,4.5,25,10.1,4.75\nBrown,2011,1030,-11,4.2,1025,-12.5,4\nCole,2015,18,10.25,3,17,9,3.5\n",
+	"mean (SD) in one cell":          "Study,Year,n treatment,Mean (SD) treatment,n control,Mean (SD) control\nAdams,2009,24,12.3 (4.5),25,10.1 (4.75)\nBrown,2011,1030,-11 (4.2),1025,-12.5 (4)\nCole,2015,18,10.25 (3),17,9 (3.5)\n",
+	"mean ± SD in one cell":          "Study|Year|n treatment|Treatment (mean ± SD)|n control|Control (mean ± SD)\nAdams|2009|24|12.3 ± 4.5|25|10.1±4.75\nBrown|2011|1,030|\u221211 ± 4.2|1,025|\u221212.5 ± 4\nCole|2015|18|10.25 ± 3|17|9 ± 3.5\n",
+	"three figures in one cell":      "Study\tYear\tTreatment: n, mean (SD)\tControl: n, mean (SD)\nAdams\t2009\t24, 12.3 (4.5)\t25, 10.1 (4.75)\nBrown\t2011\t1030, -11 (4.2)\t1025, -12.5 (4)\nCole\t2015\t18, 10.25 (3)\t17, 9 (3.5)\n",
+	"one row per group":              "Study,Year,Group,n,Mean,SD\nAdams,2009,Break,24,12.3,4.5\nAdams,2009,Control,25,10.1,4.75\nBrown,2011,Break,1030,-11,4.2\nBrown,2011,Control,1025,-12.5,4\nCole,2015,Break,18,10.25,3\nCole,2015,Control,17,9,3.5\n",
+	"one row per group, labels once": "Study,Year,Condition,n,Mean,SD\nAdams,2009,Control,25,10.1,4.75\n,,Break,24,12.3,4.5\nBrown,2011,Control,1025,-12.5,4\n,,Break,1030,-11,4.2\nCole,2015,Control,17,9,3.5\n,,Break,18,10.25,3\n",
+	"units and notes":                "Study,Year,n treatment,Mean treatment (ms),SD treatment [ms],n control,Mean control (ms),SD control [ms],Comments,Country\nAdams,2009,24,12.3,4.5,25,10.1,4.75,\"two sites, one ward\",X\nBrown,2011,1030,-11,4.2,1025,-12.5,4,,\nCole,2015,18,10.25,3,17,9,3.5,,Y\n",
+	"years in the labels":            "Author (year),n treatment,mean treatment,sd treatment,n control,mean control,sd control\nAdams (2009),24,12.3,4.5,25,10.1,4.75\nBrown (2011),1030,-11,4.2,1025,-12.5,4\nCole (2015),18,10.25,3,17,9,3.5\n",
+	"codes and camel case":           "studyID,pubYear,nTreat,meanTreat,sdTreat,nCtrl,meanCtrl,sdCtrl\nAdams,2009,24,12.3,4.5,25,10.1,4.75\nBrown,2011,1030,-11,4.2,1025,-12.5,4\nCole,2015,18,10.25,3,17,9,3.5\n",
+	"stars, spaces, headings twice":  "Study , Year , N Treatment, Mean Treatment , SD Treatment, N Control, Mean Control, SD Control\n Adams ,2009, 24 , 12.3* ,4.5,25,10.1,4.75 \nStudy , Year , N Treatment, Mean Treatment , SD Treatment, N Control, Mean Control, SD Control\nBrown,2011,\"1 030\",-11,4.2,\"1,025\",-12.5,4\nCole,2015,18,10.25,3,17,9,3.5\n",
+}
+
+// gist is what must be the same in all versions.
+func gist(s *Sheet) string {
+	var b strings.Builder
+	for _, r := range s.Records {
+		name, _, _ := strings.Cut(r.Study, " (")
+		fmt.Fprintf(&b, "%s %d", name, r.Year)
+		got := figuresOf(r)
+		for _, m := range slices.Sorted(maps.Keys(got)) {
+			fmt.Fprintf(&b, " %s=%v", m, got[m])
+		}
+		b.WriteByte('\n')
+	}
+	return b.String()
+}
+
+func TestMessyVersionsAgree(t *testing.T) {
+	want := gist(readCSVText(t, plainVersion, Options{}))
+	if !strings.Contains(want, "Brown 2011 control mean=-12.5 control n=1025 control sd=4 treatment mean=-11 treatment n=1030 treatment sd=4.2") {
+		t.Fatal(want)
+	}
+	for name, text := range messyVersions {
+		opt := Options{}
+		if strings.HasPrefix(name, "group named") {
+			opt.Groups = []string{"break", "no break"}
+		}
+		s := readCSVText(t, text, opt)
+		if got := gist(s); got != want {
+			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kinds(s.Findings))
+		}
+		for _, f := range s.Findings {
+			if f.Severity == "error" {
+				t.Errorf("%s: %s", name, f)
+			}
+		}
+	}
+}
+
+// The same with cells merged over columns and rows, and in the three workbook formats.
+func TestMergedVersionsAgree(t *testing.T) {
+	want := gist(readCSVText(t, plainVersion, Options{}))
+	f := excelize.NewFile()
+	defer f.Close()
+	rows := [][]any{{"Evidence table of the review"}, {"Study", "Year", "Group", "n", "Outcome"}, {nil, nil, nil, nil, "Mean", "SD"}}
+	for _, r := range [][]any{{"Adams", 2009, 24, 12.3, 4.5, 25, 10.1, 4.75}, {"Brown", 2011, 1030, -11, 4.2, 1025, -12.5, 4}, {"Cole", 2015, 18, 10.25, 3, 17, 9, 3.5}} {
+		rows = append(rows, []any{r[0], r[1], "Break", r[2], r[3], r[4]}, []any{nil, nil, "Control", r[5], r[6], r[7]})
+	}
+	for i, r := range rows {
+		for j, v := range r {
+			if v != nil {
+				if err := f.SetCellValue("Sheet1", address(j+1, i+1), v); err != nil {
+					t.Fatal(err)
+				}
+			}
+		}
+	}
+	for _, m := range []string{"A1:F1", "A2:A3", "B2:B3", "C2:C3", "D2:D3", "E2:F2", "A4:A5", "B4:B5", "A6:A7", "B6:B7", "A8:A9", "B8:B9"} {
+		a, b, _ := strings.Cut(m, ":")
+		if err := f.MergeCell("Sheet1", a, b); err != nil {
+			t.Fatal(err)
+		}
+	}
+	var b bytes.Buffer
+	if err := f.Write(&b); err != nil {
+		t.Fatal(err)
+	}
+	if d := os.Getenv("KEEP_MERGED"); d != "" { // to make the other formats from, by a spreadsheet program
+		if err := os.WriteFile(filepath.Join(d, "merged.xlsx"), b.Bytes(), 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	s := mustRead(t, write(t, "merged.xlsx", b.Bytes()), Options{})
+	if got := gist(s); got != want {
+		t.Errorf("xlsx:\n%swant\n%s%s", got, want, kinds(s.Findings))
+	}
+	if s.Layout != "one row per group" || !strings.Contains(kinds(s.Findings), "merged-cells") {
+		t.Errorf("%s %s", s.Layout, kinds(s.Findings))
+	}
+	for _, name := range []string{"merged.ods", "merged.xls"} {
+		s := mustRead(t, filepath.Join("testdata", name), Options{})
+		if got := gist(s); got != want {
+			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kinds(s.Findings))
+		}
+	}
+}
+
+func TestSharedControl(t *testing.T) {
+	s := readCSVText(t, "study,arm,n,mean,sd\nA,low dose,10,5,2\nA,high dose,11,6,2\nA,placebo,12,4,2\nB,drug,10,5,2\nB,placebo,10,4,2\n", Options{})
+	if len(s.Records) != 3 || s.Records[0].Reported.Control.N.Value != 12 || s.Records[1].Reported.Control.N.Value != 12 || !strings.Contains(kinds(s.Findings), "shared-control@row 4") {
+		t.Errorf("%s %s", gist(s), kinds(s.Findings))
+	}
+}
