@@ -36,6 +36,7 @@ func newRecordReader(g *grid, set *columnSet) *recordReader {
 		r.last = max(r.last, c.Column)
 	}
 	r.mark = r.decideMark()
+	r.findPercents()
 	r.places = map[Meaning]place{}
 	r.single = set.has("mean", "median", "proportion", "rate") || set.has("events", "non-events") && !set.has(Estimate, "observed minus expected", "log-rank chi-square", "treatment events")
 	return r
@@ -85,6 +86,45 @@ func (r *recordReader) decideMark() decimalMark {
 			"use one decimal mark throughout")
 	}
 	return 0
+}
+
+// findPercents marks columns of shares that hold percentages without a sign: values above 1, none above 100. Both
+// groups' columns go together, since a column of small percentages alone can't be told from shares.
+func (r *recordReader) findPercents() {
+	above, other := 0, 0
+	first := ""
+	for _, row := range r.g.rows[r.set.row+1:] {
+		for i := range row.cells {
+			c := &row.cells[i]
+			k, ok := r.byIndex[int(c.column)]
+			if !ok || !r.set.list[k].isShare() || r.set.list[k].u.percent {
+				continue
+			}
+			n, fault := r.number(c, r.set.list[k].Meaning)
+			switch {
+			case fault != numberFine:
+			case n.percent || c.kind == percentCell || n.value > 100:
+				other++
+			case n.value > 1:
+				if above++; first == "" {
+					first = address(int(c.column), row.n)
+				}
+			}
+		}
+	}
+	if above == 0 || other > 0 {
+		return
+	}
+	for k := range r.set.list {
+		if r.set.list[k].isShare() {
+			r.set.list[k].u.percent, r.set.list[k].Percent = true, true
+		}
+	}
+	r.g.note(finding.Warning, "percent-as-number", first, fmt.Sprintf("%d shares are above 1, so all shares were read as percentages", above), "put % into the heading or behind the values")
+}
+
+func (c *column) isShare() bool {
+	return strings.HasSuffix(string(c.Meaning), "proportion") && len(c.Meaning.parts()) == 1
 }
 
 func countEvidence(text string) decimalMark {
