@@ -28,7 +28,7 @@ type Options struct {
 	Overrides map[string]string // cell address to the text to read in place of what stands there (decisions)
 
 	MaxBytes   int64 // largest file; 0 means 64 MiB
-	MaxUnzip   int64 // largest content of a packed file; 0 means 256 MiB
+	MaxUnzip   int64 // largest content of a packed file; 0 means 128 MiB
 	MaxRows    int   // 0 means 200,000
 	MaxColumns int   // 0 means 1,000
 	MaxCells   int   // 0 means 5,000,000
@@ -44,7 +44,7 @@ func (o Options) withDefaults() Options {
 		o.MaxBytes = 64 << 20
 	}
 	if o.MaxUnzip <= 0 {
-		o.MaxUnzip = 256 << 20
+		o.MaxUnzip = 128 << 20
 	}
 	set(&o.MaxRows, 200_000)
 	set(&o.MaxColumns, 1000)
