@@ -95,7 +95,7 @@ func newForest(p *result.Plan, o figureOptions) *forest {
 		f.rowH = 17
 	}
 	if f.dense {
-		f.rowH = math.Max(1.2, 620/float64(len(f.rows)))
+		f.rowH = math.Max(0.4, 720/float64(len(f.rows)))
 	}
 	f.columns = f.layout()
 	f.x = f.domain()
@@ -199,7 +199,7 @@ func (f *forest) worthwhile() *result.Worthwhile {
 func (f *forest) figure(rows []result.Study, legend bool) Figure {
 	s := &scene{W: f.o.width()}
 	y := 0.0
-	if legend {
+	if legend && !f.dense {
 		y = f.legend(s)
 	}
 	top := y + 14

@@ -137,7 +137,7 @@ func (f *nextStudy) needMarks(base float64, y axis) {
 		}
 		m := needMark{x: f.x.at(s.Effect), y: y.cut(float64(firstGroup(c.N))), text: wholeText(firstGroup(c.N)), ink: f.pens[s.Name].ink}
 		f.s.add(line(m.x, base, m.x, m.y, m.ink, 1).dash("2 3"))
-		if len(cluster) > 0 && math.Abs(m.x-cluster[len(cluster)-1].x) > 36 {
+		if len(cluster) > 0 && (math.Abs(m.x-cluster[len(cluster)-1].x) > 36 || math.Abs(m.y-cluster[len(cluster)-1].y) > 26) {
 			f.markCluster(cluster, side)
 			cluster = nil
 		}

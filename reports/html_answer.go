@@ -16,7 +16,7 @@ func head(v *page, p *result.Plan) {
 		v.Meta = append(v.Meta, fmt.Sprintf("edition %d", p.Edition))
 	}
 	if p.Pool != nil {
-		text := fmt.Sprintf("%d prior %s", p.Pool.K, plural(p.Pool.K, "study", "studies"))
+		text := fmt.Sprintf("%s prior %s", wholeText(p.Pool.K), plural(p.Pool.K, "study", "studies"))
 		high := 0
 		for _, s := range p.Pool.Studies {
 			if s.Used && s.RiskOfBias == "high" {

@@ -14,20 +14,22 @@ func (w writer) evidence() *section {
 		return nil
 	}
 	s := &section{ID: "evidence", Title: "What the studies say", Lead: w.evidenceLead()}
-	forest := block{Margin: []note{w.poolNote()}}
 	wide, narrow := ForestFigures(w.p), ForestFigures(w.p, Narrow())
-	for i := range wide {
-		v, missing := pair(wide[i], narrow[i])
-		if missing != "" {
-			forest.Missing = missing
-			continue
+	for i := range wide { // a block for each sheet of paper
+		b := block{}
+		if v, missing := pair(wide[i], narrow[i]); missing != "" {
+			b.Missing = missing
+		} else {
+			b.Figures = []figurePair{v}
 		}
-		forest.Figures = append(forest.Figures, v)
+		if i == 0 {
+			b.Margin = []note{w.poolNote()}
+			if pool.Prediction.Why != "" {
+				b.Margin = append(b.Margin, note{"Next effect", upperFirst(pool.Prediction.Why)})
+			}
+		}
+		s.Blocks = append(s.Blocks, b)
 	}
-	if pool.Prediction.Why != "" {
-		forest.Margin = append(forest.Margin, note{"Next effect", upperFirst(pool.Prediction.Why)})
-	}
-	s.Blocks = append(s.Blocks, forest)
 	if len(pool.Sentences) > 0 {
 		s.Blocks = append(s.Blocks, block{List: pool.Sentences})
 	}

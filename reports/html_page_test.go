@@ -214,6 +214,10 @@ func testPictures(t *testing.T, b *browser) {
 	b.dark(false)
 	b.open(page, 390)
 	b.picture(filepath.Join(dir, "page-390.png"))
+	for _, k := range []int{3, 1000} {
+		b.open(mustHTML(t, k, false), 1100)
+		b.picture(filepath.Join(dir, fmt.Sprintf("page-%d-studies.png", k)))
+	}
 	b.open(mustHTML(t, 80, false), 1100)
 	b.pdf(filepath.Join(dir, "page-80.pdf"), chromedp.PaperA4)
 }

@@ -57,8 +57,32 @@ type Comparison struct {
 	FrozenPower     *float64       `json:"frozenPower"`
 	Rules           []RuleOutcome  `json:"rules"`
 	Triggered       bool           `json:"triggered"`
+	Move            *Move          `json:"move"` // what moved the number to enrol; null where it was not asked
 	Line            string         `json:"line"` // one-line summary
 	History         []HistoryPoint `json:"history"`
+}
+
+// Move takes the move of the number to enrol apart: the share of each part is its change averaged over all orders in
+// which the parts can be put in (Shapley 1953), so that the shares add up to the move.
+type Move struct {
+	From   int         `json:"from"` // people to enrol
+	To     int         `json:"to"`
+	Parts  []MovePart  `json:"parts"`
+	Orders []MoveOrder `json:"orders"`
+	Why    string      `json:"why"` // why it is not available
+}
+
+// MovePart is one part of a move.
+type MovePart struct {
+	Name   string  `json:"name"` // "studies", "rows", "options"
+	Words  string  `json:"words"`
+	Change float64 `json:"change"` // people, averaged over the orders
+}
+
+// MoveOrder is the move in one order of its parts.
+type MoveOrder struct {
+	Order   []string `json:"order"`
+	Changes []int    `json:"changes"` // people, in that order
 }
 
 // EditionRef names an edition; Number 0 is the run now.

@@ -2,25 +2,28 @@ package result
 
 // Pool is the result of pooling one evidence sheet: the document of `footing pool --json`.
 type Pool struct {
-	Schema         string        `json:"schema"` // "footing/pool/1"
-	Tool           Tool          `json:"tool"`
-	Evidence       Evidence      `json:"evidence"`
-	Scale          ScaleInfo     `json:"scale"`
-	Level          float64       `json:"level"` // of every interval unless the interval says other
-	Studies        []Study       `json:"studies"`
-	K              int           `json:"k"`            // studies pooled
-	Participants   *float64      `json:"participants"` // in the pooled studies, where known
-	Common         Pooled        `json:"common"`
-	Random         Pooled        `json:"random"` // by the plan's estimator and interval
-	MantelHaenszel *Pooled       `json:"mantelHaenszel"`
-	Peto           *Pooled       `json:"peto"`
-	Heterogeneity  Heterogeneity `json:"heterogeneity"`
-	Prediction     Prediction    `json:"prediction"`
-	Estimators     []Estimator   `json:"estimators"`
-	SmallStudy     []SmallStudy  `json:"smallStudy"`
-	Influence      []Influence   `json:"influence"`
-	Findings       []Finding     `json:"findings"`
-	Sentences      []string      `json:"sentences"` // what it says about this field, plain words, one figure each
+	Schema         string            `json:"schema"` // "footing/pool/1"
+	Tool           Tool              `json:"tool"`
+	Evidence       Evidence          `json:"evidence"`
+	Scale          ScaleInfo         `json:"scale"`
+	Level          float64           `json:"level"` // of every interval unless the interval says other
+	Studies        []Study           `json:"studies"`
+	K              int               `json:"k"`            // studies pooled
+	Participants   *float64          `json:"participants"` // in the pooled studies, where known
+	Common         Pooled            `json:"common"`
+	Random         Pooled            `json:"random"` // by the plan's estimator and interval
+	MantelHaenszel *Pooled           `json:"mantelHaenszel"`
+	Peto           *Pooled           `json:"peto"`
+	Heterogeneity  Heterogeneity     `json:"heterogeneity"`
+	Prediction     Prediction        `json:"prediction"`
+	Estimators     []Estimator       `json:"estimators"`
+	SmallStudy     []SmallStudy      `json:"smallStudy"`
+	Influence      []Influence       `json:"influence"`
+	Subgroups      []Subgroup        `json:"subgroups"` // where the plan asks for them
+	Between        *Between          `json:"between"`
+	Cumulative     []CumulativePoint `json:"cumulative"` // by year
+	Findings       []Finding         `json:"findings"`
+	Sentences      []string          `json:"sentences"` // what it says about this field, plain words, one figure each
 }
 
 // Evidence says where the rows came from.

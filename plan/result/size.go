@@ -15,6 +15,7 @@ type Size struct {
 	NeedCurve   []NeedPoint   `json:"needCurve"` // n that each effect would need, on one effect axis
 	Sensitivity []Sensitivity `json:"sensitivity"`
 	Levers      []Lever       `json:"levers"`
+	Choices     *ChoiceMap    `json:"choices"`
 	Grid        *Grid         `json:"grid"` // for the interactive panel
 	Findings    []Finding     `json:"findings"`
 }
