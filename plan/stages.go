@@ -26,4 +26,7 @@ type EvidenceRead struct {
 type BuiltRange struct {
 	*result.Range
 	Unadjusted, Adjusted power.Effects // nil where there is none
+	// TargetWhy says why another scenario than the one asked for is sized for, "" when it is the one.
+	TargetWhy string
+	Findings  []finding.Finding
 }
