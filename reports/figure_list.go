@@ -8,7 +8,7 @@ func Figures(p *result.Plan, o ...FigureOption) []Figure {
 	c := cleanPlan(p)
 	var out []Figure
 	for _, draw := range []func(*result.Plan, ...FigureOption) Figure{
-		ForestFigure, InfluenceFigure, AdjustedFigure, FunnelFigure, NextFigure, PowerFigure, AssuranceFigure, ScenariosFigure, LeversFigure, SensitivityFigure, HistoryFigure,
+		ForestFigure, SubgroupsFigure, CumulativeFigure, InfluenceFigure, AdjustedFigure, FunnelFigure, NextFigure, PowerFigure, AssuranceFigure, ScenariosFigure, LeversFigure, CostFigure, SensitivityFigure, ChoicesFigure, HistoryFigure,
 	} {
 		if f := draw(c, o...); f.empty == "" {
 			out = append(out, f)

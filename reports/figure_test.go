@@ -10,6 +10,7 @@ import (
 
 // everyFigure names all figures of a report.
 var everyFigure = map[string]func(*result.Plan, ...FigureOption) Figure{
+	"subgroups": SubgroupsFigure, "cumulative": CumulativeFigure, "cost": CostFigure, "choices": ChoicesFigure, "history": HistoryFigure,
 	"forest": ForestFigure, "funnel": FunnelFigure, "next-study": NextFigure, "power": PowerFigure, "assurance": AssuranceFigure,
 	"scenarios": ScenariosFigure, "influence": InfluenceFigure, "adjusted": AdjustedFigure, "levers": LeversFigure, "sensitivity": SensitivityFigure,
 }

@@ -87,6 +87,10 @@ func (h presence) evidenceItems() []asked {
 	if h.p.Pool != nil && len(h.pool.SmallStudy) == 0 {
 		small = "too few studies"
 	}
+	groups := none
+	if groups == "" && len(h.pool.Subgroups) < 2 {
+		groups = "the plan asks for none"
+	}
 	items := []asked{
 		{"Primary outcome and comparison, with the attributes of the estimand", "DELTA2, ICH E9 and E9(R1)", at(len(h.st.Estimand) > 0, "size"), ""},
 		{"Search date, the rule for which studies count, studies used and left out", "DELTA2, PRISMA 13a", at(h.pool.Evidence.Searched != nil && h.pool.Evidence.Searched.Date != "" && h.pool.Evidence.Searched.Rule != "", "data"), none},
@@ -98,7 +102,7 @@ func (h presence) evidenceItems() []asked {
 		{"Q, degrees of freedom, p, τ² and I² with intervals; a warning when studies are few", "PRISMA 20b, Cochrane Handbook 10", at(h.pool.Heterogeneity.Q != nil && h.pool.Heterogeneity.TauSquared != nil, "evidence"), none},
 		{"Prediction interval, or why it is withheld", "Cochrane Handbook 10", at(h.pool.Prediction.Interval != nil || h.pool.Prediction.Why != "", "evidence"), none},
 		{"Small-study and adjusted results; below ten studies no test, said plainly", "PRISMA 14 and 21, Cochrane Handbook 13", at(len(h.pool.SmallStudy) > 0, "inflated"), first(none, small)},
-		{"Subgroup or regression results, with the rule of ten studies for each covariate", "PRISMA 13e and 20c", "", first(none, "none was asked for in the plan")},
+		{"Subgroup or regression results, with the rule of ten studies for each covariate", "PRISMA 13e and 20c", at(len(h.pool.Subgroups) > 1, "evidence"), groups},
 		{"Sensitivity: leaving one study out, other models, other imputations", "PRISMA 13f and 20d", at(len(h.pool.Influence) > 0 || len(h.pool.Estimators) > 0, "evidence"), none},
 		{"Size of one adequately powered trial against the total so far", "GRADE imprecision", at(h.pool.Participants != nil && h.p.Size.Chosen != nil, "evidence"), none},
 	}

@@ -34,6 +34,16 @@ func (w writer) evidence() *section {
 		s.Blocks = append(s.Blocks, block{List: pool.Sentences})
 	}
 	s.Blocks = append(s.Blocks, w.heterogeneity())
+	if len(pool.Subgroups) > 1 {
+		b := w.figure(SubgroupsFigure, w.betweenNote())
+		b.Heading = "Groups of studies"
+		s.Blocks = append(s.Blocks, b)
+	}
+	if len(pool.Cumulative) > 2 {
+		b := w.figure(CumulativeFigure, note{"Reading it", "Each line adds one study. An average that keeps sliding towards no effect is a warning: early studies are often the largest."})
+		b.Heading = "As the studies came in"
+		s.Blocks = append(s.Blocks, b)
+	}
 	if left := w.leftOut(); left != nil {
 		s.Blocks = append(s.Blocks, *left)
 	}
@@ -46,6 +56,18 @@ func (w writer) evidence() *section {
 		s.Blocks = append(s.Blocks, w.estimators())
 	}
 	return s
+}
+
+// betweenNote is the margin of the groups: the test between them, and how little it can say.
+func (w writer) betweenNote() note {
+	text := "Groups were compared because the plan asks for it; a difference between them is not a difference within a study."
+	if b := w.p.Pool.Between; b != nil && b.Q != nil && b.P != nil {
+		text = fmt.Sprintf("Q %s on %d df, p %s. %s", fixed(*b.Q, 1), b.DF, pEquals(*b.P), text)
+		if b.Weak != "" {
+			text += " " + upperFirst(b.Weak) + "."
+		}
+	}
+	return note{"Between groups", text}
 }
 
 func (w writer) evidenceLead() string {

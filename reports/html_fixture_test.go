@@ -169,6 +169,7 @@ func (f *fixture) pool(p *result.Plan) {
 		in.PerGroup, in.ToEnrol, in.Cost = []int{n, n}, whole(2*n+80), num(float64(26000+130*(2*n+80)))
 		pool.Influence = append(pool.Influence, in)
 	}
+	f.groups(pool, studies[:f.k], t)
 	p.Pool = pool
 	p.Findings = []finding.Finding{
 		{Severity: finding.Warning, Kind: "sd-looks-like-se", Place: finding.Place{File: "evidence.xlsx", Sheet: "Studies", Cell: "E7"}, Study: "North college", Text: "1.9", What: "SD 1.9 is a fifth of the other rows' (9.0 to 13.0) and may be a standard error", Mend: "give it under a heading \"SE\", or answer it in the plan's decisions"},
@@ -178,6 +179,31 @@ func (f *fixture) pool(p *result.Plan) {
 	p.Undecided = 1
 	pool.Findings = p.Findings
 	sort.SliceStable(pool.Influence, func(i, j int) bool { return pool.Influence[i].Row < pool.Influence[j].Row })
+}
+
+// groups are two subgroups and the mean as the studies came in; their means are rough.
+func (f *fixture) groups(pool *result.Pool, studies []result.Study, t float64) {
+	part := func(of []result.Study) result.Pooled {
+		var w, wy float64
+		for _, s := range of {
+			w += *s.Weight / (f.se * f.se)
+			wy += *s.Weight / (f.se * f.se) * *s.Estimate
+		}
+		e, se := wy/w, 1/math.Sqrt(w)
+		return result.Pooled{Method: "dersimonian-laird", Estimate: num(e), StandardError: num(se), Interval: &result.Interval{Level: 0.95, Lower: e - t*se, Upper: e + t*se}}
+	}
+	if f.k < 4 {
+		return
+	}
+	half := f.k / 2
+	pool.Subgroups = []result.Subgroup{{Name: "schools", K: half, Random: part(studies[:half]), ISquared: num(0.2), TauSquared: num(0.01)}, {Name: "adult classes", K: f.k - half, Random: part(studies[half:]), ISquared: num(0.4), TauSquared: num(0.03)}}
+	pool.Between = &result.Between{Q: num(1.9), DF: 1, P: num(0.168), Weak: "few studies in each group"}
+	sorted := slices.Clone(studies)
+	byYear(sorted)
+	for i := range sorted {
+		m := part(sorted[:i+1])
+		pool.Cumulative = append(pool.Cumulative, result.CumulativePoint{Row: sorted[i].Row, Study: sorted[i].Study, Year: sorted[i].Year, K: i + 1, Estimate: m.Estimate, Lower: num(m.Interval.Lower), Upper: num(m.Interval.Upper)})
+	}
 }
 
 func weakIf(b bool, s string) string {
@@ -331,7 +357,35 @@ func (f *fixture) size(p *result.Plan) {
 		s.Levers = append(s.Levers, result.Lever{Words: v.w, N: m, ToEnrol: e, Change: m.Groups[0] - chosen.Groups[0], Cost: cost(e), Price: v.price})
 	}
 	s.Grid = f.grid(n)
+	s.Choices = f.choices(chosen, enrol)
 	p.Size = s
+}
+
+func (f *fixture) choices(chosen *result.N, enrol func(*result.N) *result.N) *result.ChoiceMap {
+	m := &result.ChoiceMap{Dimensions: []result.ChoiceDimension{
+		{Name: "estimator", Words: "estimator", Options: []string{"DerSimonian-Laird", "REML", "Paule-Mandel"}},
+		{Name: "adjustment", Words: "adjustment", Options: []string{"none", "selection model", "regression on the standard error"}},
+		{Name: "studies", Words: "studies", Options: []string{"all", "low risk of bias", "since 2014"}},
+		{Name: "limit", Words: "cautious limit of", Options: []string{"next study", "mean"}}}}
+	for i := 0; i < 54; i++ {
+		o := []int{i % 3, i / 3 % 3, i / 9 % 3, i / 27}
+		c := result.ChoiceCombination{Options: o, Plan: i == 0, K: f.k - 2*o[2]}
+		e := f.mean * (0.9 + 0.02*float64(o[0])) * []float64{1, 0.78, 0.2}[o[1]] * []float64{0.8, 0.6, 0.9}[o[2]] * []float64{0.85, 1}[o[3]]
+		if o[1] == 2 && o[2] != 2 {
+			c.Why = "at or beyond no effect"
+			m.NoSize++
+		} else {
+			c.Effect, c.N = num(e), f.pair(f.need(e, 0.8))
+			c.ToEnrol = enrol(c.N)
+			if c.N.Groups[0] <= chosen.Groups[0] {
+				m.Enough++
+			} else {
+				m.More++
+			}
+		}
+		m.Combinations = append(m.Combinations, c)
+	}
+	return m
 }
 
 func (f *fixture) grid(n float64) *result.Grid {

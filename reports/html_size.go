@@ -129,7 +129,7 @@ func (w writer) designTable() block {
 // changes writes what would change the size: levers and what hangs on the assumptions.
 func (w writer) changes() *section {
 	p := w.p
-	if len(p.Size.Levers) == 0 && len(p.Size.Sensitivity) == 0 {
+	if len(p.Size.Levers) == 0 && len(p.Size.Sensitivity) == 0 && p.Size.Choices == nil && p.Size.Study.Cost == nil {
 		return nil
 	}
 	s := &section{ID: "changes", Title: "What would change the size", Lead: w.changesLead()}
@@ -138,12 +138,37 @@ func (w writer) changes() *section {
 		b.Heading = "What would make the study smaller, and its price"
 		s.Blocks = append(s.Blocks, b)
 	}
+	if p.Size.Study.Cost != nil {
+		b := w.figure(CostFigure, w.costNote())
+		b.Heading = "What each scenario costs"
+		s.Blocks = append(s.Blocks, b)
+	}
 	if len(p.Size.Sensitivity) > 0 {
 		b := w.figure(SensitivityFigure, note{"If wrong", "The bars show what the number becomes; the last column the power that is left if the plan’s size is kept."})
 		b.Heading = "What if an assumption is wrong"
 		s.Blocks = append(s.Blocks, b)
 	}
+	if m := p.Size.Choices; m != nil {
+		b := w.figure(ChoicesFigure, note{"Each tick", "is one combination, sized for its own cautious limit. The share of combinations is a count of choices, not a probability."})
+		b.Heading = "How much hangs on choices of analysis"
+		if m.Sentence != "" {
+			b.Paragraphs = append(b.Paragraphs, m.Sentence)
+		} else if len(m.Combinations) > 0 {
+			b.Paragraphs = append(b.Paragraphs, fmt.Sprintf("Of %s defensible ways to analyse the sheet, %s need the planned size or fewer, %s more, and for %s no size exists. A count, not a probability.",
+				wholeText(len(m.Combinations)), wholeText(m.Enough), wholeText(m.More), wholeText(m.NoSize)))
+		}
+		s.Blocks = append(s.Blocks, b)
+	}
 	return s
+}
+
+func (w writer) costNote() note {
+	k := w.p.Size.Study.Cost
+	text := fmt.Sprintf("%s fixed and %s a person.", costText(w.p, &k.Fixed), costText(w.p, &k.PerParticipant))
+	if c := w.p.Size.Chosen; c != nil && c.AffordableToEnrol != nil {
+		text += fmt.Sprintf(" The limit reaches %s people.", wholeText(*c.AffordableToEnrol))
+	}
+	return note{"Cost", text}
 }
 
 func (w writer) changesLead() string {
