@@ -28,11 +28,10 @@ func ChoicesFigure(p *result.Plan, o ...FigureOption) Figure {
 }
 
 type choiceMap struct {
-	p    *result.Plan
-	m    *result.ChoiceMap
-	o    figureOptions
-	x    axis
-	rows int
+	p *result.Plan
+	m *result.ChoiceMap
+	o figureOptions
+	x axis
 }
 
 // measure sets the axis over all sizes; false when there is none.
@@ -67,7 +66,10 @@ func (c *choiceMap) draw() scene {
 	if c.o.narrow {
 		step = 34
 	}
-	top := 22.0
+	if k := c.p.Size.Chosen; k != nil {
+		px := c.x.at(float64(firstGroup(&k.N)))
+		s.add(line(px, 22, px, c.bottom(y+step, step), inkPlan, 1.2).dash("4 3"))
+	}
 	y += step
 	for d, dim := range c.m.Dimensions {
 		s.add(line(0, y-step/2-1, s.W, y-step/2-1, inkLine, 1))
@@ -78,10 +80,6 @@ func (c *choiceMap) draw() scene {
 		y += 4
 	}
 	bottom := y - step/2
-	if k := c.p.Size.Chosen; k != nil {
-		px := c.x.at(float64(firstGroup(&k.N)))
-		s.add(line(px, top, px, bottom, inkPlan, 1.2).dash("4 3"))
-	}
 	s.add(line(c.x.A, bottom, c.x.B, bottom, inkFaint, 1))
 	for _, t := range c.x.thin(countTicks(c.x.Lo, c.x.Hi, map[bool]int{false: 8, true: 5}[c.o.narrow]), 11) {
 		s.add(line(c.x.at(t.Value), bottom, c.x.at(t.Value), bottom+4, inkFaint, 1), label(c.x.at(t.Value), bottom+17, t.Text, inkSoft, 11).middle())
@@ -89,6 +87,14 @@ func (c *choiceMap) draw() scene {
 	s.add(label(c.x.B, bottom+33, groupWords(c.p), inkSoft, 11).end(), label(s.W, 14, "no size", inkSoft, 11).end())
 	s.H = bottom + 38
 	return s
+}
+
+// bottom is where the rows end when the first stands at y.
+func (c *choiceMap) bottom(y, step float64) float64 {
+	for _, d := range c.m.Dimensions {
+		y += step*float64(len(d.Options)) + 4
+	}
+	return y - step/2
 }
 
 // planRow is the plan's own analysis, on top.
@@ -113,7 +119,7 @@ func (c *choiceMap) row(s *scene, d, i int, dim result.ChoiceDimension, option s
 		name = words(dim.Name)
 	}
 	if c.o.narrow {
-		s.add(clipped(0, y-6, name+": "+option, s.W-70, inkText, 11.5, false))
+		s.add(above(y-6, name+": "+option, s.W-70, false))
 		y += 9
 	} else {
 		if i == 0 {

@@ -62,7 +62,7 @@ func CostFigure(p *result.Plan, o ...FigureOption) Figure {
 		text := scenarioWords(p, c.Scenario) + " " + scale.text(c.Effect)
 		bold := p.Size.Chosen != nil && p.Size.Chosen.Scenario == c.Scenario
 		if opt.narrow {
-			s.add(clipped(0, y-8, text, s.W, inkText, 12, bold))
+			s.add(above(y-8, text, s.W, bold))
 			y += 8
 		} else {
 			s.add(clipped(0, y+4, text, name, inkText, 12, bold))

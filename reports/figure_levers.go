@@ -90,6 +90,7 @@ func (b barPlot) draw() scene {
 	bottom := top + rowH*float64(len(b.rows)) + 4
 	px := x.at(b.planned)
 	s.add(label(math.Min(math.Max(px, textWidth(b.head, 12, true)/2), x.B), 14, b.head, inkPlan, 12).bold().middle())
+	s.add(line(px, 20, px, bottom, inkPlan, 1.2).dash("4 3"))
 	at := x.B + 42
 	for i, h := range columns {
 		at += widths[i]
@@ -108,7 +109,6 @@ func (b barPlot) draw() scene {
 	for j, r := range b.rows {
 		b.drawRow(&s, x, r, top+rowH*(float64(j)+0.5), name, detailRoom)
 	}
-	s.add(line(px, 20, px, bottom, inkPlan, 1.2).dash("4 3"))
 	s.add(line(x.A, bottom, x.B, bottom, inkFaint, 1))
 	for _, t := range x.thin(linearTicks(x.Lo, x.Hi, map[bool]int{false: 5, true: 3}[b.o.narrow]), 11) {
 		s.add(line(x.at(t.Value), bottom, x.at(t.Value), bottom+4, inkFaint, 1), label(x.at(t.Value), bottom+17, t.Text, inkSoft, 11).middle())
@@ -137,7 +137,7 @@ func (b barPlot) cell(r barRow, i, skip int) string {
 
 func (b barPlot) drawRow(s *scene, x axis, r barRow, y, name, detailRoom float64) {
 	if b.o.narrow {
-		s.add(clipped(0, y-8, r.name, s.W, inkText, 12, false))
+		s.add(above(y-8, r.name, s.W, false))
 		y += 8
 	} else {
 		s.add(clipped(0, y+4, r.name, name, inkText, 12, false))

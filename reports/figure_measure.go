@@ -1,6 +1,7 @@
 package reports
 
 import (
+	"math"
 	"sync"
 	"unicode"
 	"unicode/utf8"
@@ -105,6 +106,12 @@ func clipped(x, y float64, text string, width float64, fill ink, size float64, b
 		e.Title = clipRunes(text, 300)
 	}
 	return e
+}
+
+// above is a name over its row on a telephone: on paper, so that lines through all rows do not strike it out.
+func above(y float64, text string, width float64, bold bool) element {
+	e := clipped(0, y, text, width, inkText, 12, bold)
+	return group("", rect(-1, y-10.5, math.Min(width, textWidth(e.Text, 12, bold)+2), 14, inkPaper).faded(0.88), e)
 }
 
 // clipRunes cuts a text to a number of characters, visibly.

@@ -103,7 +103,7 @@ func (r rowPlot) draw() scene {
 
 func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
 	if r.o.narrow {
-		s.add(clipped(0, y-5, row.name, x.B, inkText, 12, row.bold))
+		s.add(above(y-5, row.name, x.B, row.bold))
 		y += 8
 	} else {
 		s.add(clipped(0, y+4, row.name, nameRoom, inkText, 12, row.bold))
