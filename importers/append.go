@@ -50,7 +50,7 @@ func Append(path string, opt Options, old, added *Sheet) ([]byte, error) {
 func (s *Sheet) targetsOf(added *Sheet) (map[int]int, finding.Problems) {
 	used := map[int]bool{}
 	for i := range added.Records {
-		for _, c := range added.Records[i].Cells {
+		for _, c := range added.Records[i].Cells() {
 			used[c.Column] = used[c.Column] || strings.TrimSpace(c.Text) != ""
 		}
 	}
@@ -142,7 +142,7 @@ func (s *Sheet) appendWorkbook(path string, added *Sheet, targets map[int]int) (
 				return nil, err
 			}
 		}
-		for _, c := range added.Records[i].Cells {
+		for _, c := range added.Records[i].Cells() {
 			at := address(targets[c.Column], row)
 			if targets[c.Column] == 0 || strings.TrimSpace(c.Text) == "" {
 				continue
@@ -209,7 +209,7 @@ func (s *Sheet) appendText(path string, opt Options, added *Sheet, targets map[i
 	out.UseCRLF = bytes.Contains(data, []byte("\r\n"))
 	for i := range added.Records {
 		line := make([]string, width)
-		for _, c := range added.Records[i].Cells {
+		for _, c := range added.Records[i].Cells() {
 			if to := targets[c.Column]; to > 0 {
 				line[to-1] = guardText(c.Text)
 			}
@@ -252,7 +252,7 @@ func differs(a, b *Record) string {
 	if a.Study != strings.TrimPrefix(b.Study, "'") && a.Study != b.Study || a.Year != b.Year || a.RiskOfBias != b.RiskOfBias || a.Relevance != b.Relevance || a.Subgroup != b.Subgroup || a.Status != b.Status {
 		return "its label, year or judgements"
 	}
-	x, y := a.Reported, b.Reported
+	x, y := a.Reported(), b.Reported()
 	if !sameFigures(reflect.ValueOf(&x).Elem(), reflect.ValueOf(&y).Elem()) {
 		return "its figures"
 	}

@@ -55,7 +55,7 @@ func TestAppendKeepsFormattingAndReadsTheSame(t *testing.T) {
 			t.Fatalf("%s: %d records, %v", name, len(now.Records), err)
 		}
 		c := now.Records[2]
-		if got := strings.TrimPrefix(c.Study, "'"); got != "=Cedar" || c.Year != 2020 || c.Reported.Treatment.Events.Value != 7 || c.Reported.Control.N.Value != 41 || c.Row != 4 {
+		if got := strings.TrimPrefix(c.Study, "'"); got != "=Cedar" || c.Year != 2020 || c.Reported().Treatment.Events.Value != 7 || c.Reported().Control.N.Value != 41 || c.Row != 4 {
 			t.Errorf("%s: %+v", name, c)
 		}
 	}

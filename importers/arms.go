@@ -32,7 +32,7 @@ func (r *recordReader) armColumn(recs []Record, groups []string) int {
 		for _, run := range runsOfStudy(recs) {
 			control := 0
 			for _, k := range run {
-				if armOf(textIn(&recs[k], c.Column), groups) == "control" {
+				if armOf(recs[k].textAt(c.Column), groups) == "control" {
 					control++
 				}
 			}
@@ -46,15 +46,6 @@ func (r *recordReader) armColumn(recs []Record, groups []string) int {
 		}
 	}
 	return -1
-}
-
-func textIn(rec *Record, column int) string {
-	for _, c := range rec.Cells {
-		if c.Column == column {
-			return c.Text
-		}
-	}
-	return ""
 }
 
 // runsOfStudy cuts the records into runs of neighbours with the same label.
@@ -99,7 +90,7 @@ func (r *recordReader) joinArms(recs []Record, column int, groups []string) []Re
 	for _, run := range runsOfStudy(recs) {
 		var treated, control []int
 		for _, k := range run {
-			if armOf(textIn(&recs[k], col), groups) == "control" {
+			if armOf(recs[k].textAt(col), groups) == "control" {
 				control = append(control, k)
 			} else {
 				treated = append(treated, k)
@@ -122,7 +113,7 @@ func (r *recordReader) joinArms(recs []Record, column int, groups []string) []Re
 			rec := recs[run[0]]
 			r.tell(finding.Error, "groups-not-paired", &rec, fmt.Sprintf("row %d", rec.Row), rec.Study,
 				fmt.Sprintf("%q has %d rows of a control group and %d others, so it is not clear which belong together; the study is not used", shorten(rec.Study), len(control), len(treated)), "give each study one row for each group")
-			rec.Reported = effect.Reported{}
+			rec.kept, rec.rest = nil, keptRest{}
 			out = append(out, rec)
 		}
 	}
@@ -132,9 +123,9 @@ func (r *recordReader) joinArms(recs []Record, column int, groups []string) []Re
 // joinTwo puts the figures of the control group's row beside those of the treatment group's.
 func joinTwo(t, c Record) Record {
 	out := t
-	out.Cells = slices.Concat(t.Cells, c.Cells)
+	out.joined = append(slices.Clone(t.joined), row{n: c.Row, hidden: c.Hidden, cells: c.cells})
 	out.Hidden = t.Hidden || c.Hidden
-	rep, other := t.Reported, c.Reported
+	rep, other := t.Reported(), c.Reported()
 	rep.Control = other.Treatment
 	rep.N = effect.Figure{} // of one group only
 	for m, get := range figures {
@@ -158,7 +149,7 @@ func joinTwo(t, c Record) Record {
 	if out.Status == "" {
 		out.Status = c.Status
 	}
-	out.Reported = rep
+	out.keep(&rep, allPlaces)
 	return out
 }
 
@@ -191,3 +182,12 @@ func (g *grid) fillMerged(below int) {
 		g.note(finding.Note, "merged-cells", "", fmt.Sprintf("%d cells under merged cells were given the value of the merged cell", filled), "")
 	}
 }
+
+// allPlaces are the numbers of all places.
+var allPlaces = func() []uint8 {
+	out := make([]uint8, len(places))
+	for i := range out {
+		out[i] = uint8(i)
+	}
+	return out
+}()

@@ -13,9 +13,6 @@ import (
 // cell reads one cell of a record by what its column means.
 func (r *recordReader) cell(rec *Record, c *cell, k int, at string) {
 	col := &r.set.list[k]
-	if col.Meaning == "" || col.Meaning == Study {
-		return
-	}
 	switch c.kind {
 	case errorCell:
 		r.tell(finding.Error, "error-cell", rec, at, c.text, fmt.Sprintf("the cell holds the error %s", shorten(c.text)), "mend the formula in the spreadsheet")
@@ -32,11 +29,11 @@ func (r *recordReader) cell(rec *Record, c *cell, k int, at string) {
 		r.year(rec, c, at)
 		return
 	}
-	r.figure(rec, c, k, at)
+	r.readFigure(rec, c, k, at)
 }
 
-// figure reads a cell that should hold one number.
-func (r *recordReader) figure(rec *Record, c *cell, k int, at string) {
+// readFigure reads a cell that should hold one number.
+func (r *recordReader) readFigure(rec *Record, c *cell, k int, at string) {
 	col := &r.set.list[k]
 	if c.kind == dateCell {
 		r.tell(finding.Error, "date-in-number-cell", rec, at, c.text, fmt.Sprintf("the cell holds the date %s where %s should stand; spreadsheet programs turn entries such as 5/12 or 1-3 into dates", c.text, col.Meaning),
@@ -54,7 +51,7 @@ func (r *recordReader) figure(rec *Record, c *cell, k int, at string) {
 	case fault == numberMissing:
 		return
 	case fault == numberNot && isNotSignificant(c.text) && takesNotSignificant[col.Meaning]:
-		rec.Reported.NotSignificant = true
+		r.rep.NotSignificant = true
 		return
 	case fault == numberNot && c.kind == textCell && r.several(rec, c, col, at):
 		return
@@ -83,20 +80,17 @@ func (r *recordReader) store(rec *Record, m Meaning, n number, c *cell, col *col
 		r.nonEvents(rec, rest, f)
 		return
 	}
-	if p := r.placeOf(m); p != nil {
-		if dst := p(&rec.Reported); !dst.Given {
+	if p := r.placeOf(m); p >= 0 {
+		if dst := places[p](&r.rep); !dst.Given {
 			*dst = f
-		}
-		if m == N && !rec.Reported.N.Given {
-			rec.Reported.N = f
 		}
 	}
 	switch m {
 	case "point-biserial r":
-		rec.Reported.PointBiserial = true
+		r.rep.PointBiserial = true
 	case P:
-		if col.Sides != 0 && rec.Reported.PSides == 0 {
-			rec.Reported.PSides = col.Sides
+		if col.Sides != 0 && r.rep.PSides == 0 {
+			r.rep.PSides = col.Sides
 		}
 	}
 }
@@ -225,19 +219,20 @@ func (r *recordReader) inDomain(rec *Record, meaning Meaning, f *effect.Figure, 
 
 // nonEvents adds people without the event to those with it, for the group's n.
 func (r *recordReader) nonEvents(rec *Record, arm string, f effect.Figure) {
-	a := &rec.Reported.Treatment
+	a := &r.rep.Treatment
 	if arm == "control " {
-		a = &rec.Reported.Control
+		a = &r.rep.Control
 	}
 	if a.N.Given || r.set.has(Meaning(arm+"n")) {
 		return
 	}
+	r.placeOf(Meaning(map[string]string{"control ": "control n"}[arm] + map[string]string{"": "treatment n", "treatment ": "treatment n"}[arm]))
 	a.N = f // finish adds the events once all cells are read
 }
 
 // finish settles what needs the whole row.
 func (r *recordReader) finish(rec *Record) {
-	rep := &rec.Reported
+	rep := &r.rep
 	for arm, a := range map[string]*effect.Arm{"treatment ": &rep.Treatment, "control ": &rep.Control, "": &rep.Treatment} {
 		if r.set.has(Meaning(arm+"non-events")) && !r.set.has(Meaning(arm+"n")) && a.N.Given {
 			if a.Events.Given {
@@ -315,7 +310,7 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 		}
 	case Direction:
 		d, ok := directions[folded]
-		if rec.Reported.Direction = d; !ok && !isMissing(folded) {
+		if r.rep.Direction = d; !ok && !isMissing(folded) {
 			unclear("direction that is known here", `use "favours treatment" or "favours control"`)
 		}
 	case Better:
@@ -333,9 +328,9 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 	case SidesOfP:
 		switch strings.NewReplacer("-", " ", "sided", "", "tailed", "", "tail", "").Replace(folded) {
 		case "1", "one", "1 ", "one ", "1.0":
-			rec.Reported.PSides = 1
+			r.rep.PSides = 1
 		case "2", "two", "2 ", "two ", "2.0":
-			rec.Reported.PSides = 2
+			r.rep.PSides = 2
 		default:
 			if !isMissing(folded) {
 				unclear("number of sides", "use one or two")
@@ -345,9 +340,9 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 		u, ok := understand(text, nil)
 		switch {
 		case ok && u.scale != "" && u.rest == "":
-			rec.Reported.EstimateScale, rec.Reported.EstimateIsLog = u.scale, u.log
+			r.rep.EstimateScale, r.rep.EstimateIsLog = u.scale, u.log
 		case ok && u.meaning == "mean difference":
-			rec.Reported.EstimateScale = effect.MeanDifference
+			r.rep.EstimateScale = effect.MeanDifference
 		case !isMissing(folded):
 			unclear("scale of an effect that is known here", "use its name, such as odds ratio, log odds ratio, standardized mean difference")
 		}

@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"hash/fnv"
 	"math"
 	"slices"
 	"strings"
@@ -34,34 +35,60 @@ func (s *Sheet) addAt(sev finding.Severity, kind string, r *Record, cell, text, 
 	s.Findings = append(s.Findings, finding.Finding{Severity: sev, Kind: kind, Place: finding.Place{File: s.File, Sheet: s.Name, Cell: cell}, Study: r.Study, Text: text, What: what, Mend: mend})
 }
 
-// figuresKey writes the figures of a record down for comparison; n counts them.
-func figuresKey(r *Record) (key string, n int) {
-	var b strings.Builder
-	for _, c := range r.Cells {
-		if c.Meaning.isNumeric() && c.Meaning != Year && c.Meaning != Relevance && !isMissing(c.Text) {
-			b.WriteString(string(c.Meaning))
-			b.WriteByte('=')
-			b.WriteString(c.Text)
-			b.WriteByte('\x00')
+// figuresHash is a hash of all figures of a record, as typed; n counts them.
+func figuresHash(r *Record) (key uint64, n int) {
+	h := fnv.New64a()
+	add := func(cells []cell) {
+		for i := range cells {
+			c := &cells[i]
+			col := r.set.at(int(c.column))
+			if col == nil || !col.Meaning.isNumeric() || col.Meaning == Year || col.Meaning == Relevance || isMissing(c.text) {
+				continue
+			}
+			h.Write([]byte{byte(c.column), byte(c.column >> 8)})
+			h.Write([]byte(c.text))
 			n++
 		}
 	}
-	return b.String(), n
+	add(r.cells)
+	for _, j := range r.joined {
+		add(j.cells)
+	}
+	return h.Sum64(), n
+}
+
+// figuresKey writes all figures of a record down by meaning, as typed; n counts them.
+func figuresKey(r *Record) (key string, n int) {
+	var out []string
+	for _, c := range r.Cells() {
+		if c.Meaning.isNumeric() && c.Meaning != Year && c.Meaning != Relevance && !isMissing(c.Text) {
+			out = append(out, string(c.Meaning)+"="+c.Text)
+		}
+	}
+	return strings.Join(out, "\x00"), len(out)
+}
+
+// sameFiguresTyped proves what equal hashes suggest.
+func sameFiguresTyped(a, b *Record) bool {
+	x, _ := figuresKey(a)
+	y, _ := figuresKey(b)
+	return x == y
 }
 
 // checkDuplicates reports rows that say the same in every figure, and labels that stand before several rows.
 func (s *Sheet) checkDuplicates() {
-	figures := make(map[string]int, len(s.Records))
-	labels := make(map[string][]int, len(s.Records))
+	figures := make(map[uint64]int, len(s.Records))
+	labels := make(map[string]int, len(s.Records)) // rows of each label
+	folded := make([]string, len(s.Records))
 	for i := range s.Records {
 		r := &s.Records[i]
-		key, n := figuresKey(r)
-		label := foldHeading(r.Study)
-		labels[label] = append(labels[label], i)
+		folded[i] = foldHeading(r.Study)
+		labels[folded[i]]++
+		key, n := figuresHash(r)
 		if n < 2 {
 			continue
 		}
-		if first, ok := figures[key]; ok {
+		if first, ok := figures[key]; ok && sameFiguresTyped(&s.Records[first], r) {
 			o := &s.Records[first]
 			s.add(finding.Warning, "duplicate-row", r, fmt.Sprintf("all figures of this row (%q) are those of row %d (%q)", shorten(r.Study), o.Row, shorten(o.Study)), "delete one of them if the study was entered twice")
 			continue
@@ -70,12 +97,16 @@ func (s *Sheet) checkDuplicates() {
 	}
 	told := map[string]bool{}
 	for i := range s.Records {
-		label := foldHeading(s.Records[i].Study)
-		at := labels[label]
-		if len(at) < 2 || told[label] {
+		if labels[folded[i]] < 2 || told[folded[i]] {
 			continue
 		}
-		told[label] = true
+		told[folded[i]] = true
+		var at []int
+		for j := i; j < len(folded) && len(at) < 12; j++ {
+			if folded[j] == folded[i] {
+				at = append(at, j)
+			}
+		}
 		s.add(finding.Warning, "several-rows-one-study", &s.Records[i], fmt.Sprintf("the label %q stands in rows %s; rows of one study are not independent", shorten(s.Records[i].Study), s.rowList(at)),
 			"give different studies different labels; of one study keep one row (keep where can choose by outcome), or combine them")
 	}
@@ -103,7 +134,8 @@ func (s *Sheet) checkControls() {
 	seen := map[group]int{}
 	for i := range s.Records {
 		r := &s.Records[i]
-		c := &r.Reported.Control
+		rep := r.Reported()
+		c := &rep.Control
 		figures := [6]effect.Figure{c.N, c.Mean, c.SD, c.Events, c.Median, c.SE}
 		g := group{label: foldHeading(r.Study)}
 		n := 0
@@ -136,9 +168,10 @@ func (s *Sheet) checkSDs(arm string) {
 	}
 	var rows []row
 	for i := range s.Records {
-		a := &s.Records[i].Reported.Treatment
+		rep := s.Records[i].Reported()
+		a := &rep.Treatment
 		if arm == "control" {
-			a = &s.Records[i].Reported.Control
+			a = &rep.Control
 		}
 		if a.SD.Given && a.SD.Value > 0 && a.N.Given && a.N.Value >= 4 && a.Mean.Given {
 			rows = append(rows, row{&s.Records[i], a.SD.Cell, a.SD.Value, a.N.Value, math.Abs(a.Mean.Value)})
@@ -174,7 +207,7 @@ func median(sorted []float64) float64 {
 }
 
 func textOf(r *Record, cell string) string {
-	for _, c := range r.Cells {
+	for _, c := range r.Cells() {
 		if c.Address == cell {
 			return c.Text
 		}

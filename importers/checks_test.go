@@ -37,8 +37,8 @@ func TestPercentages(t *testing.T) {
 		"numbers": "study,n1,risk 1,n2,risk 2\nA,48,25,50,30\nB,40,12.5,40,0.5\n", "signs": "study,n1,risk 1,n2,risk 2\nA,48,25%,50,30%\nB,40,12.5 %,40,0.5%\n", "heading": "study,n1,risk 1 (%),n2,risk 2 (%)\nA,48,25,50,30\nB,40,12.5,40,0.5\n",
 	} {
 		s := readCSVText(t, sheet, Options{})
-		b := s.Records[1].Reported
-		if s.Records[0].Reported.Treatment.Proportion.Value != 0.25 || b.Treatment.Proportion.Value != 0.125 || b.Control.Proportion.Value != 0.005 || b.Treatment.Proportion.Decimals != 3 {
+		b := s.Records[1].Reported()
+		if s.Records[0].Reported().Treatment.Proportion.Value != 0.25 || b.Treatment.Proportion.Value != 0.125 || b.Control.Proportion.Value != 0.005 || b.Treatment.Proportion.Decimals != 3 {
 			t.Errorf("%s: %+v %+v", name, b.Treatment.Proportion, b.Control.Proportion)
 		}
 		if warned := strings.Contains(kinds(s.Findings), "percent-as-number"); warned != (name == "numbers") {

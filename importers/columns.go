@@ -24,6 +24,37 @@ type columnSet struct {
 	row  int // index into grid.rows of the last heading row
 	rows int // heading rows, 1 or 2
 	list []column
+
+	letters  []string // name of each column of list
+	byColumn []int32  // index into list + 1, by column; filled once the columns are settled
+}
+
+// settle makes columns findable by their number.
+func (s *columnSet) settle() {
+	last := 0
+	for _, c := range s.list {
+		last = max(last, c.Column)
+	}
+	s.byColumn, s.letters = make([]int32, last+1), make([]string, len(s.list))
+	for i, c := range s.list {
+		s.letters[i] = columnName(c.Column)
+		s.byColumn[c.Column] = int32(i + 1)
+	}
+}
+
+// at finds a column by its number; nil when it has no heading.
+func (s *columnSet) at(column int) *column {
+	if i := s.index(column); i >= 0 {
+		return &s.list[i]
+	}
+	return nil
+}
+
+func (s *columnSet) index(column int) int {
+	if column >= len(s.byColumn) {
+		return -1
+	}
+	return int(s.byColumn[column]) - 1
 }
 
 // mapping is Options.Columns, checked: heading (folded) to meaning.
@@ -31,6 +62,14 @@ type mapping map[string]Meaning
 
 // foldHeading makes headings comparable: case, spaces and look-alike characters don't count.
 func foldHeading(s string) string {
+	folded := true
+	for i := 0; i < len(s) && folded; i++ {
+		c := s[i]
+		folded = c > ' ' && c < 0x7f && (c < 'A' || c > 'Z') || c == ' ' && i > 0 && i+1 < len(s) && s[i-1] != ' '
+	}
+	if folded {
+		return s
+	}
 	return strings.ToLower(strings.Join(strings.Fields(plainText(s)), " "))
 }
 

@@ -97,7 +97,7 @@ type stated struct {
 func statements(r *Record) map[Meaning]stated {
 	out := map[Meaning]stated{}
 	byCell := map[string]string{}
-	for _, c := range r.Cells {
+	for _, c := range r.Cells() {
 		byCell[c.Address] = c.Text
 		if c.Meaning == Year || c.Meaning == RiskOfBias || c.Meaning == Relevance || c.Meaning == Subgroup || c.Meaning == Status || c.Meaning == Direction {
 			out[c.Meaning] = stated{c.Meaning, foldHeading(c.Text), c.Address, c.Text}
@@ -125,7 +125,7 @@ func statements(r *Record) map[Meaning]stated {
 			out[m] = stated{m, fmt.Sprint(f.Value, f.Bound), f.Cell, byCell[f.Cell]}
 		}
 	}
-	rep := r.Reported
+	rep := r.Reported()
 	for _, m := range plainOrder {
 		if get := figures[m]; get != nil && m != "point-biserial r" {
 			keep(m, get(&rep))

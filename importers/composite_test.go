@@ -10,8 +10,9 @@ import (
 // figuresOf lists the figures of one record by meaning.
 func figuresOf(r Record) map[Meaning]float64 {
 	out := map[Meaning]float64{}
+	rep := r.Reported()
 	for m, get := range figures {
-		if f := get(&r.Reported); f.Given && m != "point-biserial r" {
+		if f := get(&rep); f.Given && m != "point-biserial r" {
 			out[m] = f.Value
 		}
 	}
@@ -19,10 +20,10 @@ func figuresOf(r Record) map[Meaning]float64 {
 		if get == nil {
 			continue
 		}
-		if f := get(&r.Reported.Treatment); f.Given {
+		if f := get(&rep.Treatment); f.Given {
 			out["treatment "+m] = f.Value
 		}
-		if f := get(&r.Reported.Control); f.Given {
+		if f := get(&rep.Control); f.Given {
 			out["control "+m] = f.Value
 		}
 	}
@@ -94,8 +95,8 @@ func TestCompositeCells(t *testing.T) {
 				t.Errorf("%s: %q gave %v, want %v", c.heading, c.cell, got, c.want)
 			}
 		}
-		if c.heading == "p" && strings.Contains(c.cell, "<") != (s.Records[0].Reported.P.Bound == effect.Below) {
-			t.Errorf("%q: bound %v", c.cell, s.Records[0].Reported.P.Bound)
+		if c.heading == "p" && strings.Contains(c.cell, "<") != (s.Records[0].Reported().P.Bound == effect.Below) {
+			t.Errorf("%q: bound %v", c.cell, s.Records[0].Reported().P.Bound)
 		}
 	}
 }

@@ -32,7 +32,7 @@ func ExampleRead() {
 		fmt.Printf("%s %q: %s\n", h.Cell, h.Typed, h.Meaning)
 	}
 	for _, r := range s.Records {
-		fmt.Println(r.Study, r.Year, r.Reported.Estimate.Given, r.Reported.Estimate.Value, r.Reported.StandardError.Value)
+		fmt.Println(r.Study, r.Year, r.Reported().Estimate.Given, r.Reported().Estimate.Value, r.Reported().StandardError.Value)
 	}
 	for _, f := range s.Findings {
 		fmt.Println(f.Severity, f)

@@ -17,11 +17,11 @@ import (
 func dump(s *Sheet) string {
 	var b strings.Builder
 	for _, r := range s.Records {
-		fmt.Fprintf(&b, "%d %q %d %s hidden=%v ns=%v\n", r.Row, r.Study, r.Year, r.RiskOfBias, r.Hidden, r.Reported.NotSignificant)
-		for _, c := range r.Cells {
+		fmt.Fprintf(&b, "%d %q %d %s hidden=%v ns=%v\n", r.Row, r.Study, r.Year, r.RiskOfBias, r.Hidden, r.Reported().NotSignificant)
+		for _, c := range r.Cells() {
 			fmt.Fprintf(&b, "  %s %s=%q\n", c.Address, c.Meaning, c.Text)
 		}
-		rep := r.Reported
+		rep := r.Reported()
 		fmt.Fprintf(&b, "  %+v\n  %+v\n  %+v\n", rep.Treatment.Mean, rep.Treatment.SD, rep.P)
 	}
 	b.WriteString(kinds(s.Findings))

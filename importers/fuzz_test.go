@@ -28,14 +28,15 @@ func checkSheet(t *testing.T, s *Sheet, err error) {
 		return
 	}
 	for _, r := range s.Records {
-		for _, c := range r.Cells {
+		for _, c := range r.Cells() {
 			col, row, err := excelize.CellNameToCoordinates(c.Address)
 			if err != nil || col != c.Column || row != r.Row {
 				t.Fatalf("cell %+v of row %d", c, r.Row)
 			}
 		}
+		rep := r.Reported()
 		for m, get := range figures {
-			f := get(&r.Reported)
+			f := get(&rep)
 			if math.IsNaN(f.Value) || math.IsInf(f.Value, 0) || f.Given && f.Cell == "" {
 				t.Fatalf("%s: %+v", m, f)
 			}

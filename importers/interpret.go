@@ -35,6 +35,7 @@ func interpret(g *grid, opt Options) (*Sheet, error) {
 	earlier := g.findings
 	g.findings = nil
 	s := &Sheet{File: g.file, Name: g.name, Sheets: g.sheets, Layout: "one row per study"}
+	set.settle()
 	g.fillMerged(g.rows[set.row].n)
 	r := newRecordReader(g, &set)
 	s.Records = r.readAll()
@@ -198,14 +199,13 @@ func (s *columnSet) guessStudy(g *grid) {
 func (s *Sheet) fillFirst() {
 	for i := range s.Headings {
 		h := &s.Headings[i]
-		for _, r := range s.Records {
+		for k := range s.Records {
+			r := &s.Records[k]
 			if len(h.First) == 3 {
 				break
 			}
-			for _, c := range r.Cells {
-				if c.Column == h.Column {
-					h.First = append(h.First, shorten(c.Text))
-				}
+			if text := r.textAt(h.Column); text != "" {
+				h.First = append(h.First, shorten(text))
 			}
 		}
 	}

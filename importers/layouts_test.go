@@ -126,7 +126,7 @@ func TestMergedVersionsAgree(t *testing.T) {
 
 func TestSharedControl(t *testing.T) {
 	s := readCSVText(t, "study,arm,n,mean,sd\nA,low dose,10,5,2\nA,high dose,11,6,2\nA,placebo,12,4,2\nB,drug,10,5,2\nB,placebo,10,4,2\n", Options{})
-	if len(s.Records) != 3 || s.Records[0].Reported.Control.N.Value != 12 || s.Records[1].Reported.Control.N.Value != 12 || !strings.Contains(kinds(s.Findings), "shared-control@row 4") {
+	if len(s.Records) != 3 || s.Records[0].Reported().Control.N.Value != 12 || s.Records[1].Reported().Control.N.Value != 12 || !strings.Contains(kinds(s.Findings), "shared-control@row 4") {
 		t.Errorf("%s %s", gist(s), kinds(s.Findings))
 	}
 }

@@ -47,7 +47,7 @@ const headRow = `<row r="1"><c r="A1" t="inlineStr"><is><t>study</t></is></c><c 
 
 func TestMinimalBook(t *testing.T) {
 	s := mustRead(t, write(t, "a.xlsx", pack(t, minimalBook(headRow+`<row r="2"><c r="A2" t="s"><v>0</v></c><c r="B2"><v>0.25</v></c><c r="C2"><v>0.125</v></c></row>`, `<si><t>A</t></si>`))), Options{})
-	if len(s.Records) != 1 || s.Records[0].Reported.Estimate.Value != 0.25 {
+	if len(s.Records) != 1 || s.Records[0].Reported().Estimate.Value != 0.25 {
 		t.Errorf("%+v", s.Records)
 	}
 }
@@ -75,15 +75,15 @@ func TestBombs(t *testing.T) {
 		data []byte
 		kind string
 	}{
-		"10,000 columns":    {pack(t, minimalBook(wide.String(), "")), "too-many-columns"},
-		"far columns":       {pack(t, minimalBook(sparse.String(), "")), "too-many-columns"},
+		"10,000 columns":  {pack(t, minimalBook(wide.String(), "")), "too-many-columns"},
+		"far columns":     {pack(t, minimalBook(sparse.String(), "")), "too-many-columns"},
 		"9 MB of strings": {pack(t, minimalBook(headRow, zeros)), "file-too-large"},
-		"deep nesting":      {pack(t, minimalBook(deep, "")), "file-damaged"},
-		"repeated rows":     {ods(`<table:table-row table:number-rows-repeated="1000000">` + odsCell + `</table:table-row>`), "sheet-too-large"},
-		"repeated cells":    {ods(`<table:table-row><table:table-cell table:number-columns-repeated="16000" office:value-type="float" office:value="1"/></table:table-row>`), "too-many-columns"},
-		"wide text":         {[]byte("study,estimate,se\nA,1,1" + strings.Repeat(",1", 5000) + "\n"), "too-many-columns"},
-		"many parts":        {manyParts(t), "file-too-large"},
-		"encrypted part":    {bytes.ReplaceAll(pack(t, minimalBook(headRow, "")), []byte("PK\x01\x02\x14\x00\x14\x00\x08\x00"), []byte("PK\x01\x02\x14\x00\x14\x00\x09\x00")), "file-encrypted"},
+		"deep nesting":    {pack(t, minimalBook(deep, "")), "file-damaged"},
+		"repeated rows":   {ods(`<table:table-row table:number-rows-repeated="1000000">` + odsCell + `</table:table-row>`), "sheet-too-large"},
+		"repeated cells":  {ods(`<table:table-row><table:table-cell table:number-columns-repeated="16000" office:value-type="float" office:value="1"/></table:table-row>`), "too-many-columns"},
+		"wide text":       {[]byte("study,estimate,se\nA,1,1" + strings.Repeat(",1", 5000) + "\n"), "too-many-columns"},
+		"many parts":      {manyParts(t), "file-too-large"},
+		"encrypted part":  {bytes.ReplaceAll(pack(t, minimalBook(headRow, "")), []byte("PK\x01\x02\x14\x00\x14\x00\x08\x00"), []byte("PK\x01\x02\x14\x00\x14\x00\x09\x00")), "file-encrypted"},
 	} {
 		t.Run(name, func(t *testing.T) {
 			start := time.Now()

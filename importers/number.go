@@ -40,6 +40,9 @@ var missingWords = map[string]bool{
 
 // isMissing reports whether the text is one of the usual marks for "not reported".
 func isMissing(s string) bool {
+	if len(s) > 40 || s != "" && isDigit(s[0]) {
+		return false
+	}
 	return missingWords[strings.ToLower(strings.TrimSpace(plainText(s)))]
 }
 
@@ -84,6 +87,9 @@ func plainText(s string) string {
 //
 //	[p|n|...] [= < > <= >=] [sign] digits with thousands marks [mark digits] [e exponent] [%] [stars]
 func parseNumber(text string, mark decimalMark) (number, numberFault) {
+	if n, ok := plainNumber(text); ok && (mark != ',' || n.decimals == 0) {
+		return n, numberFine
+	}
 	s := strings.TrimSpace(plainText(text))
 	if missingWords[strings.ToLower(s)] {
 		return number{}, numberMissing
@@ -114,6 +120,43 @@ func parseNumber(text string, mark decimalMark) (number, numberFault) {
 	n.value = v
 	return n, numberFine
 }
+
+// plainNumber reads the most frequent form without ado: a minus sign, up to 15 digits, a point.
+func plainNumber(s string) (number, bool) {
+	if len(s) == 0 || len(s) > 17 {
+		return number{}, false
+	}
+	i, digits, point := 0, 0, -1
+	if s[0] == '-' {
+		i++
+	}
+	var whole uint64
+	for ; i < len(s); i++ {
+		switch c := s[i]; {
+		case isDigit(c):
+			whole = whole*10 + uint64(c-'0')
+			digits++
+		case c == '.' && point < 0:
+			point = i
+		default:
+			return number{}, false
+		}
+	}
+	if digits == 0 || digits > 15 {
+		return number{}, false
+	}
+	n := number{value: float64(whole)}
+	if point >= 0 {
+		n.decimals = len(s) - point - 1
+		n.value /= powersOfTen[n.decimals] // both are exact, so the quotient is correctly rounded
+	}
+	if s[0] == '-' {
+		n.value = -n.value
+	}
+	return n, true
+}
+
+var powersOfTen = [...]float64{1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15}
 
 // takeBound takes a sign of equality or inequality off the front of s.
 func (n *number) takeBound(s string) string {
@@ -263,8 +306,12 @@ func ungroup(s string) (string, bool) {
 
 // markEvidence says which decimal mark a text proves, if any.
 func markEvidence(text string) decimalMark {
-	if strings.IndexByte(text, ',') < 0 && strings.IndexByte(text, '.') < 0 {
+	comma, point := strings.IndexByte(text, ','), strings.IndexByte(text, '.')
+	if comma < 0 && point < 0 {
 		return 0
+	}
+	if n, ok := plainNumber(text); ok && n.decimals > 0 && n.decimals != 3 {
+		return '.'
 	}
 	n := number{}
 	body, rest := splitNumber(n.takeBound(strings.TrimSpace(plainText(text))))

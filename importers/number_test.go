@@ -1,6 +1,7 @@
 package importers
 
 import (
+	"strconv"
 	"testing"
 
 	"footing/meta/effect"
@@ -43,6 +44,24 @@ func TestParseNumberRefuses(t *testing.T) {
 	} {
 		if n, fault := parseNumber(text, 0); fault != want {
 			t.Errorf("%q: fault %d (%+v), want %d", text, fault, n, want)
+		}
+	}
+}
+
+// The short way and the full grammar must give the same number.
+func TestPlainNumberAgrees(t *testing.T) {
+	for _, s := range []string{"0", "12", "-12.5", "0.1", ".5", "5.", "-0", "123456789012345", "0.00000000000001", "3.14159265358979", "999999999999999", "-.25", "1234567.25", "0.30", "1.005", "2.675"} {
+		n, ok := plainNumber(s)
+		if want, err := strconv.ParseFloat(s, 64); !ok || err != nil || n.value != want {
+			t.Errorf("%q: %v (%v), want %v", s, n.value, ok, want)
+		}
+		if full, fault := parseNumber(" "+s, '.'); fault != numberFine || full != n {
+			t.Errorf("%q: %+v and %+v", s, n, full)
+		}
+	}
+	for _, s := range []string{"", "-", ".", "1.2.3", "1e5", "+1", "1234567890123456", "1,5", " 1", "--1", "-."} {
+		if n, ok := plainNumber(s); ok {
+			t.Errorf("%q: %+v", s, n)
 		}
 	}
 }

@@ -216,13 +216,13 @@ func TestCellFindings(t *testing.T) {
 			}
 		}
 	}
-	if r := s.Records[3].Reported; !r.NotSignificant || r.P.Given {
+	if r := s.Records[3].Reported(); !r.NotSignificant || r.P.Given {
 		t.Errorf("n.s.: %+v", r)
 	}
-	if r := s.Records[2]; r.Year != 2004 || r.Reported.P.Bound >= 0 && r.Reported.P.Value != 0.001 {
+	if r := s.Records[2]; r.Year != 2004 || r.Reported().P.Bound >= 0 && r.Reported().P.Value != 0.001 {
 		t.Errorf("%+v", r)
 	}
-	if s.Records[0].Reported.Estimate.Given {
+	if s.Records[0].Reported().Estimate.Given {
 		t.Error("a text was taken for a number")
 	}
 }

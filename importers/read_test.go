@@ -112,16 +112,16 @@ func TestReadWorkbook(t *testing.T) {
 		t.Fatalf("%+v", s)
 	}
 	a, b := s.Records[0], s.Records[1]
-	if a.Row != 4 || a.Study != "Adams" || a.Year != 2009 || a.RiskOfBias != "low" || a.Other["Shift length"] != "8" {
+	if a.Row != 4 || a.Study != "Adams" || a.Year != 2009 || a.RiskOfBias != "low" || a.Other()["Shift length"] != "8" {
 		t.Errorf("%+v", a)
 	}
-	if m := a.Reported.Treatment.Mean; m.Value != 12.3 || m.Cell != "C4" || !m.Given || m.Decimals != 1 {
+	if m := a.Reported().Treatment.Mean; m.Value != 12.3 || m.Cell != "C4" || !m.Given || m.Decimals != 1 {
 		t.Errorf("mean %+v", m)
 	}
-	if n := a.Reported.Control.N; n.Value != 25 || n.Cell != "H4" {
+	if n := a.Reported().Control.N; n.Value != 25 || n.Cell != "H4" {
 		t.Errorf("n %+v", n)
 	}
-	if b.Year != 2011 || b.Reported.Control.Mean.Value != 10.5 || b.Reported.Control.SD.Value != 4.2 || b.RiskOfBias != "some concerns" {
+	if b.Year != 2011 || b.Reported().Control.Mean.Value != 10.5 || b.Reported().Control.SD.Value != 4.2 || b.RiskOfBias != "some concerns" {
 		t.Errorf("%+v", b)
 	}
 	if got := kinds(s.Findings); got != "decimal-comma@F6 row-without-figures@row 7" {
@@ -152,10 +152,10 @@ func TestReadText(t *testing.T) {
 			continue
 		}
 		a, b := s.Records[0], s.Records[1]
-		if a.Study != "A" || a.Reported.Estimate.Value != 0.31 || a.Reported.Estimate.Decimals != 2 || a.Reported.StandardError.Value != 0.12 || a.Year != 2009 {
+		if a.Study != "A" || a.Reported().Estimate.Value != 0.31 || a.Reported().Estimate.Decimals != 2 || a.Reported().StandardError.Value != 0.12 || a.Year != 2009 {
 			t.Errorf("%s: %+v", name, a)
 		}
-		if b.Study != "B" || b.Reported.Estimate.Value != -0.05 || b.Reported.StandardError.Value != 0.2 || b.Year != 2011 {
+		if b.Study != "B" || b.Reported().Estimate.Value != -0.05 || b.Reported().StandardError.Value != 0.2 || b.Year != 2011 {
 			t.Errorf("%s: %+v", name, b)
 		}
 	}
@@ -172,7 +172,7 @@ func utf16LE(s string) string {
 
 func TestRowNumbersOfText(t *testing.T) {
 	s := readCSVText(t, "study,estimate,standard error,notes\n\nA,0.31,0.12,\"two\nlines\"\n\nB,0.2,0.1,\n", Options{})
-	if s.Records[0].Row != 3 || s.Records[1].Row != 5 || s.Records[1].Cells[1].Address != "B5" {
+	if s.Records[0].Row != 3 || s.Records[1].Row != 5 || s.Records[1].Cells()[1].Address != "B5" {
 		t.Errorf("%+v", s.Records)
 	}
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"maps"
 	"slices"
+	"strconv"
 	"strings"
 
 	"footing/internal/finding"
@@ -18,10 +19,13 @@ type recordReader struct {
 	g       *grid
 	set     *columnSet
 	mark    decimalMark
-	places  map[Meaning]place
-	single  bool // the figures without an arm are about a single group
-	byIndex map[int]int
-	last    int // last column with a heading
+	numbers map[Meaning]int // place of a figure by the meaning of its column, -1 for none
+	single  bool            // the figures without an arm are about a single group
+	last    int             // last column with a heading
+	figure  []bool          // by column of set.list: it holds figures of the comparison
+	study   int             // column of the labels, 0 for none
+	rep     effect.Reported // of the row being read
+	used    []uint8         // places that any row has filled
 	told    map[string]int
 	above   struct { // the study row read last
 		label string
@@ -30,14 +34,16 @@ type recordReader struct {
 }
 
 func newRecordReader(g *grid, set *columnSet) *recordReader {
-	r := &recordReader{g: g, set: set, byIndex: map[int]int{}, told: map[string]int{}}
+	r := &recordReader{g: g, set: set, numbers: map[Meaning]int{}, told: map[string]int{}, figure: make([]bool, len(set.list))}
 	for i, c := range set.list {
-		r.byIndex[c.Column] = i
 		r.last = max(r.last, c.Column)
+		if c.Meaning == Study {
+			r.study = c.Column
+		}
+		r.figure[i] = c.Meaning.isNumeric() && c.Meaning != Year && c.Meaning != Relevance
 	}
 	r.mark = r.decideMark()
 	r.findPercents()
-	r.places = map[Meaning]place{}
 	r.single = set.has("mean", "median", "proportion", "rate") || set.has("events", "non-events") && !set.has(Estimate, "observed minus expected", "log-rank chi-square", "treatment events")
 	return r
 }
@@ -52,17 +58,20 @@ func (r *recordReader) decideMark() decimalMark {
 	points, commas := 0, 0
 	commaCell := ""
 	for _, row := range r.g.rows[r.set.row+1:] {
-		for _, c := range row.cells {
-			i, ok := r.byIndex[int(c.column)]
-			if !ok || c.kind != textCell || !r.set.list[i].Meaning.isNumeric() || len(c.text) > 60 {
+		for k := range row.cells {
+			c := &row.cells[k]
+			i := r.set.index(int(c.column))
+			if i < 0 || c.kind != textCell || !r.figure[i] || len(c.text) > 60 {
 				continue
 			}
 			m := markEvidence(c.text)
 			if m == 0 && counts[r.set.list[i].Meaning] {
 				m = countEvidence(c.text)
 			}
-			if _, fault := parseNumber(c.text, '.'); m == 0 && fault == numberNot {
-				m = compositeMark(plainText(c.text))
+			if m == 0 && strings.ContainsAny(c.text, ".,") {
+				if _, fault := parseNumber(c.text, '.'); fault == numberNot {
+					m = compositeMark(plainText(c.text))
+				}
 			}
 			switch m {
 			case '.':
@@ -96,8 +105,8 @@ func (r *recordReader) findPercents() {
 	for _, row := range r.g.rows[r.set.row+1:] {
 		for i := range row.cells {
 			c := &row.cells[i]
-			k, ok := r.byIndex[int(c.column)]
-			if !ok || !r.set.list[k].isShare() || r.set.list[k].u.percent {
+			k := r.set.index(int(c.column))
+			if k < 0 || !r.set.list[k].isShare() || r.set.list[k].u.percent {
 				continue
 			}
 			n, fault := r.number(c, r.set.list[k].Meaning)
@@ -166,8 +175,10 @@ func (r *recordReader) tell(sev finding.Severity, kind string, rec *Record, at, 
 
 // read reads one row; false when the row is no study.
 func (r *recordReader) read(row *row) (Record, bool) {
-	rec := Record{Row: row.n, Hidden: row.hidden}
-	r.fillCells(&rec, row)
+	rec := Record{Row: row.n, Hidden: row.hidden, set: r.set, cells: row.cells}
+	if s := r.study; s > 0 {
+		rec.Study = strings.TrimSpace(rec.textAt(s))
+	}
 	if r.skip(&rec, row) {
 		return rec, false
 	}
@@ -187,43 +198,17 @@ func (r *recordReader) read(row *row) (Record, bool) {
 			"put cells with a comma in double quotes")
 		return rec, true
 	}
+	r.rep = effect.Reported{}
+	number := strconv.Itoa(row.n)
 	for i := range row.cells {
 		c := &row.cells[i]
-		if k, ok := r.byIndex[int(c.column)]; ok {
-			r.cell(&rec, c, k, address(int(c.column), row.n))
+		if k := r.set.index(int(c.column)); k >= 0 && r.set.list[k].Meaning != "" && r.set.list[k].Meaning != Study {
+			r.cell(&rec, c, k, r.set.letters[k]+number)
 		}
 	}
 	r.finish(&rec)
+	rec.keep(&r.rep, r.used)
 	return rec, true
-}
-
-// fillCells keeps every cell of the row as read, the label and what has no meaning.
-func (r *recordReader) fillCells(rec *Record, row *row) {
-	rec.Cells = make([]Cell, 0, len(row.cells))
-	for _, c := range row.cells {
-		out := Cell{Address: address(int(c.column), row.n), Column: int(c.column), Text: c.text}
-		if k, ok := r.byIndex[int(c.column)]; ok {
-			h := &r.set.list[k]
-			out.Heading, out.Meaning = h.Typed, h.Meaning
-			switch h.Meaning {
-			case Study:
-				rec.Study = strings.TrimSpace(c.text)
-			case "":
-				name := h.Typed
-				if name == "" {
-					name = "column " + columnName(h.Column)
-				}
-				if rec.Other == nil {
-					rec.Other = make(map[string]string, 4)
-				}
-				if _, taken := rec.Other[name]; taken {
-					name += " (column " + columnName(h.Column) + ")"
-				}
-				rec.Other[name] = c.text
-			}
-		}
-		rec.Cells = append(rec.Cells, out)
-	}
 }
 
 var totals = map[string]bool{"total": true, "totals": true, "overall": true, "sum": true, "average": true, "mean": true,
@@ -233,31 +218,35 @@ var totals = map[string]bool{"total": true, "totals": true, "overall": true, "su
 // skip decides whether the row is a title, a footer, a total or a repeated heading, and says so.
 func (r *recordReader) skip(rec *Record, row *row) bool {
 	figures, repeats := 0, 0
-	for i := range rec.Cells {
-		c := &rec.Cells[i]
-		if c.Meaning.isNumeric() && c.Meaning != Year && c.Meaning != Relevance && !(row.cells[i].kind == textCell && isMissing(c.Text)) {
+	for i := range row.cells {
+		c := &row.cells[i]
+		k := r.set.index(int(c.column))
+		if k < 0 {
+			continue
+		}
+		if r.figure[k] && !(c.kind == textCell && isMissing(c.text)) {
 			figures++
 		}
-		if c.Heading != "" && strings.EqualFold(strings.TrimSpace(c.Text), c.Heading) {
+		if h := r.set.list[k].Typed; h != "" && c.kind == textCell && len(c.text) >= len(h) && strings.EqualFold(strings.TrimSpace(c.text), h) {
 			repeats++
 		}
 	}
-	first := strings.TrimSpace(rec.Cells[0].Text)
+	first := strings.TrimSpace(row.cells[0].text)
 	label := rec.Study
 	if label == "" {
 		label = first
 	}
 	switch {
-	case repeats >= 2 && repeats*2 >= len(rec.Cells):
+	case repeats >= 2 && repeats*2 >= len(row.cells):
 		r.tell(finding.Note, "repeated-headings", &Record{}, row.name(), "", "the row repeats the headings and was passed over", "")
 		return true
-	case totals[strings.ToLower(strings.Trim(label, " :"))]:
+	case len(label) < 30 && totals[strings.ToLower(strings.Trim(label, " :"))]:
 		r.tell(finding.Warning, "total-row", &Record{}, row.name(), label, fmt.Sprintf("the row %q looks like a total of the others, so it was not read as a study", shorten(label)),
 			"delete it, or give it a study's name if it is one")
 		return true
 	case figures > 0:
 		return false
-	case len(rec.Cells) == 1 || rec.Study == "":
+	case len(row.cells) == 1 || rec.Study == "":
 		r.saySkipped(rec, row, first)
 		return true
 	}
@@ -275,59 +264,48 @@ func (r *recordReader) saySkipped(rec *Record, row *row, first string) {
 	r.tell(sev, "row-without-figures", &Record{}, row.name(), first, what+fmt.Sprintf(": %q", shorten(first)), "fill in its figures if it is a study")
 }
 
-// placeOf says where a figure goes. Plain headings (standard error, ci lower, sd, n, events) mean what the other columns
-// make of them.
-func (r *recordReader) placeOf(m Meaning) place {
-	p, ok := r.places[m]
+// placeOf gives the number of the place where a figure goes, -1 for none. Plain headings (standard error, ci lower, sd,
+// n, events) mean what the other columns make of them.
+func (r *recordReader) placeOf(m Meaning) int {
+	n, ok := r.numbers[m]
 	if !ok {
-		p = r.set.target(m, r.single)
-		r.places[m] = p
+		n = -1
+		if p, ok := placeNumber[r.set.target(m, r.single)]; ok {
+			n = int(p)
+			if !slices.Contains(r.used, p) {
+				r.used = append(r.used, p)
+			}
+		}
+		r.numbers[m] = n
 	}
-	return p
+	return n
 }
 
-func (s *columnSet) target(m Meaning, single bool) place {
+// target is the meaning of the place where a figure of meaning m goes.
+func (s *columnSet) target(m Meaning, single bool) Meaning {
 	if !s.has(Estimate) {
 		switch diff, mean := s.has("mean difference"), s.has("mean"); {
 		case m == StandardError && diff:
-			return figures["difference se"]
+			return "difference se"
 		case (m == CILower || m == CIUpper) && diff:
-			return figures["difference "+m]
+			return "difference " + m
 		case m == "sd" && diff:
-			return figures["difference sd"]
+			return "difference sd"
 		case m == StandardError && mean:
-			return treatment("se")
+			return "treatment se"
 		case (m == CILower || m == CIUpper) && mean:
-			return treatment(m)
+			return "treatment " + m
 		}
 	}
 	switch {
 	case m == N && single:
-		return treatment("n")
+		return "treatment n"
 	case m == "events" && !single:
-		return figures["total events"]
+		return "total events"
 	case m == "sd" && !single:
-		return figures["outcome sd"]
-	case figures[m] != nil:
-		return figures[m]
+		return "outcome sd"
+	case figures[m] != nil || strings.HasPrefix(string(m), "treatment ") || strings.HasPrefix(string(m), "control "):
+		return m
 	}
-	if rest, ok := strings.CutPrefix(string(m), "treatment "); ok {
-		return treatment(Meaning(rest))
-	}
-	if rest, ok := strings.CutPrefix(string(m), "control "); ok {
-		get := armFigures[Meaning(rest)]
-		if get == nil {
-			return nil
-		}
-		return func(r *effect.Reported) *effect.Figure { return get(&r.Control) }
-	}
-	return treatment(m)
-}
-
-func treatment(m Meaning) place {
-	get := armFigures[m]
-	if get == nil {
-		return nil
-	}
-	return func(r *effect.Reported) *effect.Figure { return get(&r.Treatment) }
+	return "treatment " + m
 }

@@ -97,8 +97,8 @@ func (r *recordReader) several(rec *Record, c *cell, col *column, at string) boo
 	if parts == nil {
 		return r.sayUnclear(rec, c, col, at, &comp)
 	}
-	if comp.level != 0 && !rec.Reported.CILevel.Given {
-		rec.Reported.CILevel = effect.Figure{Value: comp.level, Given: true, Decimals: -1, Cell: at}
+	if comp.level != 0 && !r.rep.CILevel.Given {
+		*places[r.placeOf(CILevel)](&r.rep) = effect.Figure{Value: comp.level, Given: true, Decimals: -1, Cell: at}
 	}
 	if lower, upper, ok := comp.limits(parts); ok && lower > upper {
 		r.tell(finding.Error, "limits-in-wrong-order", rec, at, c.text, fmt.Sprintf("in %q the lower limit is above the upper one; the cell is not used", shorten(c.text)), "check the figures")

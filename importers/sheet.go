@@ -48,7 +48,8 @@ type Cell struct {
 	Text    string // raw text as stored, never display text; a date as its ISO form
 }
 
-// Record is one row of the evidence sheet (one study, in the simplest layout).
+// Record is one row of the evidence sheet (one study, in the simplest layout). What it reports, its cells and its further
+// columns are asked for by method: a sheet of a hundred thousand rows then fits into little memory.
 type Record struct {
 	Row          int // 1-based
 	Study        string
@@ -60,7 +61,10 @@ type Record struct {
 	Status       string
 	HigherBetter *bool // the row's own word on which way its outcome runs; nil when it has none
 	Hidden       bool  // the row is hidden in the spreadsheet
-	Reported     effect.Reported
-	Cells        []Cell
-	Other        map[string]string // columns that were not understood, by heading as typed: for moderators and filters
+
+	set    *columnSet
+	cells  []cell       // of Row
+	joined []row        // further rows that make up the record
+	kept   []keptFigure // what it reports
+	rest   keptRest
 }

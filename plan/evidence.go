@@ -133,7 +133,7 @@ func (r *evidenceReader) keepTyped(typed *importers.Sheet) {
 	}
 	for i := range r.sheet.Records {
 		if old := byRow[r.sheet.Records[i].Row]; old != nil {
-			r.sheet.Records[i].Cells = old.Cells
+			r.sheet.Records[i].ShowCellsOf(old)
 		}
 	}
 	r.sheet.Headings = typed.Headings
@@ -179,13 +179,14 @@ func (r *evidenceReader) study(rec *importers.Record, o *outcome, d *decided) re
 	if rec.HasRelevance {
 		st.Relevance = &rec.Relevance
 	}
-	for _, c := range rec.Cells {
+	for _, c := range rec.Cells() {
 		st.Cells = append(st.Cells, result.Cell{Address: c.Address, Heading: c.Heading, Meaning: string(c.Meaning), Text: c.Text})
 		if v, ok := d.overrides[c.Address]; ok {
 			st.Notes = append(st.Notes, fmt.Sprintf("%s: %s in place of %s, by decision: %s", c.Address, v, c.Text, d.reasons[c.Address]))
 		}
 	}
-	st.NTreatment, st.NControl = known(rec.Reported.Treatment.N), known(rec.Reported.Control.N)
+	rep := rec.Reported()
+	st.NTreatment, st.NControl = known(rep.Treatment.N), known(rep.Control.N)
 	if e := o.estimate; e != nil {
 		r.fillEstimate(&st, e)
 	}
@@ -216,7 +217,10 @@ func (r *evidenceReader) leftOut(rec *importers.Record, o *outcome, d *decided) 
 	if reason, ok := d.leaveOut[fmt.Sprintf("row %d", rec.Row)]; ok {
 		return "left out by decision: " + reason
 	}
-	for _, c := range rec.Cells {
+	if len(d.leaveOut) == 0 {
+		return o.why
+	}
+	for _, c := range rec.Cells() {
 		if reason, ok := d.leaveOut[c.Address]; ok {
 			return fmt.Sprintf("left out by the decision on %s: %s", c.Address, reason)
 		}

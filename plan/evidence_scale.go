@@ -75,14 +75,17 @@ func (r *evidenceReader) chooseScale() (effect.Scale, error) {
 	if r.file.Pool.Scale != "" {
 		return parseScale(r.file)
 	}
-	best, most := -1, 0
-	for k, c := range dataClasses {
-		n := 0
-		for i := range r.sheet.Records {
-			if c.held(&r.sheet.Records[i].Reported) {
-				n++
+	held := make([]int, len(dataClasses))
+	for i := range r.sheet.Records {
+		rep := r.sheet.Records[i].Reported()
+		for k, c := range dataClasses {
+			if c.held(&rep) {
+				held[k]++
 			}
 		}
+	}
+	best, most := -1, 0
+	for k, n := range held {
 		if n > most {
 			best, most = k, n
 		}
@@ -103,7 +106,7 @@ func (r *evidenceReader) chooseScale() (effect.Scale, error) {
 func (r *evidenceReader) namedScale() effect.Scale {
 	found := effect.AsGiven
 	for i := range r.sheet.Records {
-		rep := &r.sheet.Records[i].Reported
+		rep := r.sheet.Records[i].Reported()
 		if !rep.Estimate.Given && !rep.CILower.Given || rep.EstimateScale == "" {
 			continue
 		}
@@ -157,7 +160,7 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 	if h := r.file.Evidence.HigherBetter; h != nil {
 		opt.LowerBetter = !*h
 	}
-	got := effect.Compute(rec.Study, rec.Reported, opt)
+	got := effect.Compute(rec.Study, rec.Reported(), opt)
 	o := outcome{findings: r.locate(rec, got.Findings)}
 	if got.Best == nil {
 		o.why = "no figure in the row leads to an estimate"
@@ -180,6 +183,10 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 
 // locate gives the findings of the routes their file, sheet, and the text of the cell as typed.
 func (r *evidenceReader) locate(rec *importers.Record, fs []finding.Finding) []finding.Finding {
+	if len(fs) == 0 {
+		return nil
+	}
+	cells := rec.Cells()
 	out := append([]finding.Finding{}, fs...)
 	for i := range out {
 		f := &out[i]
@@ -188,7 +195,7 @@ func (r *evidenceReader) locate(rec *importers.Record, fs []finding.Finding) []f
 		if f.Place.Cell == "" {
 			f.Place.Cell = fmt.Sprintf("row %d", rec.Row)
 		}
-		for _, c := range rec.Cells {
+		for _, c := range cells {
 			if c.Address == f.Place.Cell {
 				f.Text = c.Text
 			}

@@ -156,8 +156,9 @@ func lookUp(r *importers.Record, column string) (text string, number float64, is
 	case "status":
 		return r.Status, 0, false
 	}
+	cells := r.Cells()
 	for _, byMeaning := range []bool{true, false} {
-		for _, c := range r.Cells {
+		for _, c := range cells {
 			if byMeaning && string(c.Meaning) == column || !byMeaning && foldWords(c.Heading) == column {
 				v, ok := importers.ParseNumber(c.Text)
 				return strings.TrimSpace(c.Text), v, ok

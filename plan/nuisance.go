@@ -24,11 +24,12 @@ func poolNuisance(e *EvidenceRead) map[string]Assumed {
 	var sds, risks []effect.Estimate
 	for _, i := range e.Index {
 		rec := &e.Sheet.Records[i]
-		if y, ok := logSD(&rec.Reported.Control); ok {
+		rep := rec.Reported()
+		if y, ok := logSD(&rep.Control); ok {
 			y.Study = rec.Study
 			sds = append(sds, y)
 		}
-		if y, ok := logit(&rec.Reported.Control); ok {
+		if y, ok := logit(&rep.Control); ok {
 			y.Study = rec.Study
 			risks = append(risks, y)
 		}
