@@ -9,6 +9,8 @@ import (
 
 	"footing/importers"
 	"footing/internal/finding"
+	"footing/meta"
+	"footing/meta/effect"
 )
 
 // The words of a plan file that stand for one choice out of a list.
@@ -78,6 +80,23 @@ func (c *checker) general() {
 	c.date("date", c.f.Date)
 	c.oneOf("range: basis", c.f.Range.Basis, bases)
 	c.between("pool: level", c.f.Pool.Level, 0, 1)
+	if _, err := meta.EstimatorByName(c.f.Pool.Heterogeneity); err != nil {
+		var names []string
+		for _, e := range meta.Estimators() {
+			names = append(names, e.Name)
+		}
+		c.oneOf("pool: heterogeneity", c.f.Pool.Heterogeneity, names)
+	}
+	if _, err := meta.ParseIntervalMethod(c.f.Pool.Interval); err != nil {
+		c.oneOf("pool: interval", c.f.Pool.Interval, meta.IntervalMethods())
+	}
+	if _, err := effect.ParseScale(c.f.Pool.Scale); err != nil && c.f.Pool.Scale != "" {
+		var names []string
+		for _, s := range effect.Scales() {
+			names = append(names, string(s))
+		}
+		c.oneOf("pool: scale", c.f.Pool.Scale, names)
+	}
 }
 
 func (c *checker) date(path, s string) {

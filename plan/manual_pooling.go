@@ -3,7 +3,7 @@ package plan
 var methodGroups = []string{"scales", "pooling", "intervals", "small studies", "range", "study", "routes"}
 
 // manual holds every entry; each group stands in a file of its own.
-var manual = gather(manualPooling, manualSmall, manualRange, manualStudy, manualScales)
+var manual = gather(manualPooling, manualSmall, manualRange, manualStudy, manualScales, manualRoutes)
 
 func gather(lists ...[]Method) []Method {
 	var out []Method

@@ -175,7 +175,7 @@ func (s *stages) findings(size *result.Size) []finding.Finding {
 	if s.pool != nil {
 		pool = s.pool.Findings
 	}
-	return mergeFindings(ev, pool, size.Findings)
+	return mergeFindings(ev, pool, s.built.Findings, size.Findings)
 }
 
 // undecided counts the errors and warnings that nobody has answered.

@@ -5,6 +5,8 @@ import (
 	"strings"
 	"unicode"
 
+	"footing/plan/result"
+
 	"github.com/jedib0t/go-pretty/v6/text"
 )
 
@@ -216,4 +218,13 @@ func (w *textWriter) wroteLine() {
 		w.blank()
 		w.wrapped("", 0, "Wrote "+strings.Join(w.o.Wrote, ", "))
 	}
+}
+
+// placeText names a place within its file: "Studies!F7", "row 7".
+func placeText(at result.Place) string {
+	at.File = ""
+	if strings.HasPrefix(at.Cell, "row ") {
+		return at.Cell
+	}
+	return at.String()
 }

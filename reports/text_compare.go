@@ -24,6 +24,7 @@ func TextCompare(c *result.Comparison, o TextOptions) string {
 		}
 	}
 	w.figureChanges(c.Figures)
+	w.move(c.Move)
 	w.rules(c)
 	return w.String()
 }
@@ -53,9 +54,7 @@ func (w *textWriter) studies(title string, list []result.StudyChange) {
 	w.blank()
 	w.line("%s", title)
 	for _, s := range list {
-		at := s.Place
-		at.File = ""
-		w.wrapped("", 2, fmt.Sprintf("%s (%s)", s.Study, at))
+		w.wrapped("", 2, fmt.Sprintf("%s (%s)", s.Study, placeText(s.Place)))
 		for _, v := range s.Cells {
 			w.wrapped("", 6, fmt.Sprintf("%s: %s -> %s", v.Name, orNone(v.From), orNone(v.To)))
 		}
@@ -115,4 +114,25 @@ func (w *textWriter) rules(c *result.Comparison) {
 	} else {
 		w.line("A revision rule is triggered.")
 	}
+}
+
+// move says what moved the number to enrol.
+func (w *textWriter) move(m *result.Move) {
+	if m == nil {
+		return
+	}
+	w.blank()
+	if m.Why != "" {
+		w.wrapped("", 0, "What moved the number to enrol can't be said: "+strings.TrimRight(m.Why, ".")+".")
+		return
+	}
+	w.line("%s", TermText(fmt.Sprintf("What moved the number to enrol from %s to %s", wholeText(m.From), wholeText(m.To))))
+	for _, p := range m.Parts {
+		change := TermText(fixed(p.Change, 1))
+		if p.Change > 0 {
+			change = "+" + change
+		}
+		w.line("%10s  %s", change, p.Words)
+	}
+	w.line("            (each averaged over the orders of the three)")
 }

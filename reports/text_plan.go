@@ -187,9 +187,7 @@ func (w *textWriter) waiting(p *result.Plan) {
 	var places []string
 	for _, f := range p.Findings {
 		if f.Decision == nil && f.Severity != "note" && len(places) < 2 {
-			at := f.Place
-			at.File = ""
-			if s := at.String(); s != "" {
+			if s := placeText(f.Place); s != "" {
 				places = append(places, s)
 			}
 		}

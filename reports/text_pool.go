@@ -16,7 +16,7 @@ const forestWidth = 27
 func TextPool(p *result.Pool, o TextOptions) string {
 	w := &textWriter{o: o}
 	w.head(p.Evidence.File, fmt.Sprintf("%d %s pooled", p.K, plural(p.K, "study", "studies")))
-	w.line("%s", TermText(scaleSentence(p.Scale)))
+	w.wrapped("", 0, scaleSentence(p.Scale))
 	if len(p.Evidence.Examples) > 0 {
 		w.wrapped("", 0, "Example rows still in the sheet: "+strings.Join(p.Evidence.Examples, ", "))
 	}
@@ -89,7 +89,7 @@ func (w *textWriter) forest(p *result.Pool) {
 		inks = append(inks, termEvidence)
 	}
 	w.grid(cols, rows, nil, inks)
-	w.line("● low risk of bias or not said  ○ some concerns  □ high  | no effect  : average")
+	w.line("risk of bias: ● low or not said  ○ some concerns  □ high   | none  : average")
 }
 
 func forestAxis(p *result.Pool) (textAxis, bool) {

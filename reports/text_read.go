@@ -15,7 +15,7 @@ func TextRead(r *result.Reading, o TextOptions) string {
 	if r.Evidence.Sheet != "" {
 		w.line("sheet %s", TermText(r.Evidence.Sheet))
 	}
-	w.line("scale: %s", TermText(scaleSentence(r.Scale)))
+	w.wrapped("", 0, "scale: "+scaleSentence(r.Scale))
 	w.blank()
 	w.line("Headings")
 	var rows [][]string
@@ -81,10 +81,8 @@ func (w *textWriter) findings(fs []result.Finding, most int) {
 			return
 		}
 		mark := map[finding.Severity]string{finding.Error: "error", finding.Warning: "warning", finding.Note: "note"}[f.Severity]
-		at := f.Place
-		at.File = ""
 		s := f.What
-		if p := at.String(); p != "" {
+		if p := placeText(f.Place); p != "" {
 			s = p + ": " + s
 		}
 		if f.Mend != "" {

@@ -34,6 +34,13 @@ func TextSize(s *result.Size, o TextOptions) string {
 		rows = append(rows, row)
 	}
 	w.grid(cols, rows, nil, nil)
+	if len(s.Curves) > 0 {
+		names := make([]string, len(s.Curves))
+		for i, c := range s.Curves {
+			names[i] = c.Scenario
+		}
+		w.curve(s.Curves, st.PowerTarget, names)
+	}
 	for _, y := range why {
 		w.wrapped("", 0, y)
 	}

@@ -7,6 +7,9 @@ import (
 	"footing/plan/result"
 )
 
+// Match pairs the records of two editions as Compare does: pairs holds indices of a and b.
+func Match(a, b []result.Study) (pairs [][2]int, onlyA, onlyB []int) { return matchStudies(a, b) }
+
 // matchStudies pairs the records of two editions: by label; among rows of one label by equal content, then by order;
 // what is left by equal content under another label. pairs holds indices of a and b.
 func matchStudies(a, b []result.Study) (pairs [][2]int, onlyA, onlyB []int) {

@@ -1,0 +1,52 @@
+package plan
+
+import (
+	"strings"
+	"testing"
+
+	"footing/meta"
+	"footing/meta/effect"
+)
+
+// TestEveryMethodHasAnEntry: what a plan or a result can name, the manual explains.
+func TestEveryMethodHasAnEntry(t *testing.T) {
+	want := append([]string{}, meta.IntervalMethods()...)
+	for _, e := range meta.Estimators() {
+		want = append(want, e.Name)
+	}
+	for _, s := range effect.Scales() {
+		want = append(want, string(s))
+		want = append(want, effect.Routes(s)...)
+	}
+	want = append(want, bases...)
+	want = append(want, ownScenarios...)
+	for _, name := range want {
+		if m, _, ok := FindMethod(name); !ok || m.Name != name {
+			t.Errorf("%s has no entry in the manual", name)
+		}
+	}
+}
+
+func TestEveryEntryIsWhole(t *testing.T) {
+	groups := map[string]bool{}
+	for _, g := range methodGroups {
+		groups[g] = true
+	}
+	seen := map[string]bool{}
+	for _, m := range Methods() {
+		for field, text := range map[string]string{"words": m.Words, "assumes": m.Assumes, "misleads": m.Misleads, "reference": m.Reference} {
+			if strings.TrimSpace(text) == "" {
+				t.Errorf("%s: %s is empty", m.Name, field)
+			}
+		}
+		if !groups[m.Group] {
+			t.Errorf("%s: group %q is not in the list", m.Name, m.Group)
+		}
+		for _, n := range append([]string{m.Name}, m.Also...) {
+			if seen[foldName(n)] || m.Name != foldName(m.Name) {
+				t.Errorf("%s: the name %q is taken or not in its plain form", m.Name, n)
+			}
+			seen[foldName(n)] = true
+		}
+	}
+}
