@@ -204,7 +204,7 @@ func (t *threatFinder) riskOfBias() {
 		return
 	}
 	t.add(1.5+3*weight, fmt.Sprintf("%s at high risk of bias:", map[bool]string{true: "1 study is", false: fmt.Sprintf("%d studies are", n)}[n == 1]),
-		"they carry %.0f%% of the weight of the average.", 100*weight)
+		"%.0f%% of the weight of the average.", 100*weight)
 }
 
 // assumedNuisance names a value of the planned study that has neither source nor range but decides its size.
