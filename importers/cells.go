@@ -233,13 +233,16 @@ func (r *recordReader) nonEvents(rec *Record, arm string, f effect.Figure) {
 // finish settles what needs the whole row.
 func (r *recordReader) finish(rec *Record) {
 	rep := &r.rep
-	for arm, a := range map[string]*effect.Arm{"treatment ": &rep.Treatment, "control ": &rep.Control, "": &rep.Treatment} {
-		if r.set.has(Meaning(arm+"non-events")) && !r.set.has(Meaning(arm+"n")) && a.N.Given {
-			if a.Events.Given {
-				a.N.Value += a.Events.Value
-			} else {
-				a.N = effect.Figure{}
-			}
+	for _, arm := range r.summed {
+		a := &rep.Treatment
+		if arm == "control " {
+			a = &rep.Control
+		}
+		switch {
+		case a.N.Given && a.Events.Given:
+			a.N.Value += a.Events.Value
+		case a.N.Given:
+			a.N = effect.Figure{}
 		}
 	}
 	if rep.CILower.Given || rep.CIUpper.Given || rep.Treatment.CILower.Given || rep.Control.CILower.Given || rep.DifferenceLower.Given {
@@ -250,7 +253,7 @@ func (r *recordReader) finish(rec *Record) {
 		}
 	}
 	if rep.EstimateScale == "" && (rep.Estimate.Given || rep.CILower.Given) {
-		rep.EstimateScale, rep.EstimateIsLog = r.set.estimateScale()
+		rep.EstimateScale, rep.EstimateIsLog = r.scale, r.scaleIsLog
 	}
 	if rec.Year == 0 {
 		rec.Year = yearIn(rec.Study)

@@ -8,7 +8,6 @@ import (
 	"strings"
 
 	"footing/internal/finding"
-	"footing/meta/effect"
 )
 
 // checkRows looks across the records.
@@ -131,16 +130,17 @@ func (s *Sheet) checkControls() {
 		label string
 		arm   [6]float64
 	}
+	var controls [6]uint8
+	for k, m := range []Meaning{"control n", "control mean", "control sd", "control events", "control median", "control se"} {
+		controls[k] = placeNumber[m]
+	}
 	seen := map[group]int{}
 	for i := range s.Records {
 		r := &s.Records[i]
-		rep := r.Reported()
-		c := &rep.Control
-		figures := [6]effect.Figure{c.N, c.Mean, c.SD, c.Events, c.Median, c.SE}
 		g := group{label: foldHeading(r.Study)}
 		n := 0
-		for k, f := range figures {
-			if f.Given {
+		for k, p := range controls {
+			if f := r.figure(p); f.Given {
 				g.arm[k] = f.Value
 				n++
 			}
@@ -167,17 +167,18 @@ func (s *Sheet) checkSDs(arm string) {
 		sd, n, mean float64
 	}
 	var rows []row
+	sdAt, nAt, meanAt := placeNumber[Meaning(arm+" sd")], placeNumber[Meaning(arm+" n")], placeNumber[Meaning(arm+" mean")]
+	if len(s.Records) > 20_000 {
+		return
+	}
 	for i := range s.Records {
-		rep := s.Records[i].Reported()
-		a := &rep.Treatment
-		if arm == "control" {
-			a = &rep.Control
-		}
-		if a.SD.Given && a.SD.Value > 0 && a.N.Given && a.N.Value >= 4 && a.Mean.Given {
-			rows = append(rows, row{&s.Records[i], a.SD.Cell, a.SD.Value, a.N.Value, math.Abs(a.Mean.Value)})
+		r := &s.Records[i]
+		sd, n, mean := r.figure(sdAt), r.figure(nAt), r.figure(meanAt)
+		if sd.Given && sd.Value > 0 && n.Given && n.Value >= 4 && mean.Given {
+			rows = append(rows, row{r, sd.Cell, sd.Value, n.Value, math.Abs(mean.Value)})
 		}
 	}
-	if len(rows) < 5 || len(rows) > 20_000 {
+	if len(rows) < 5 {
 		return
 	}
 	sds, means := make([]float64, len(rows)), make([]float64, len(rows))

@@ -61,6 +61,16 @@ func (r *Record) Reported() effect.Reported {
 	return out
 }
 
+// figure is one figure of the record, by the number of its place.
+func (r *Record) figure(place uint8) effect.Figure {
+	for i := range r.kept {
+		if k := &r.kept[i]; k.place == place {
+			return effect.Figure{Value: k.value, Given: true, Decimals: int(k.decimals), Bound: k.bound, Cell: k.cell}
+		}
+	}
+	return effect.Figure{}
+}
+
 // keep packs what the record reports; only the places in used can be filled.
 func (r *Record) keep(rep *effect.Reported, used []uint8) {
 	n := 0

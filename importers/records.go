@@ -22,12 +22,16 @@ type recordReader struct {
 	numbers map[Meaning]int // place of a figure by the meaning of its column, -1 for none
 	single  bool            // the figures without an arm are about a single group
 	last    int             // last column with a heading
+	summed  []string        // groups whose n is the sum of events and non-events
+	scale   effect.Scale    // named by the headings
 	figure  []bool          // by column of set.list: it holds figures of the comparison
 	study   int             // column of the labels, 0 for none
 	rep     effect.Reported // of the row being read
 	used    []uint8         // places that any row has filled
-	told    map[string]int
-	above   struct { // the study row read last
+
+	scaleIsLog bool
+	told       map[string]int
+	above      struct { // the study row read last
 		label string
 		row   int
 	}
@@ -42,6 +46,12 @@ func newRecordReader(g *grid, set *columnSet) *recordReader {
 		}
 		r.figure[i] = c.Meaning.isNumeric() && c.Meaning != Year && c.Meaning != Relevance
 	}
+	for _, arm := range []string{"treatment ", "control ", ""} {
+		if set.has(Meaning(arm+"non-events")) && !set.has(Meaning(arm+"n")) {
+			r.summed = append(r.summed, arm)
+		}
+	}
+	r.scale, r.scaleIsLog = set.estimateScale()
 	r.mark = r.decideMark()
 	r.findPercents()
 	r.single = set.has("mean", "median", "proportion", "rate") || set.has("events", "non-events") && !set.has(Estimate, "observed minus expected", "log-rank chi-square", "treatment events")
