@@ -12,7 +12,7 @@ import (
 // each effect needs (below): the eye falls from belief to cost. Effects that no size can show are hatched.
 func NextFigure(p *result.Plan, o ...FigureOption) Figure {
 	const title = "The next setting's true effect, and the size that each effect needs"
-	if p.Range == nil || len(p.Range.Curve) < 2 {
+	if p.Range == nil || len(p.Range.Curve) < 2 && len(p.Size.NeedCurve) < 2 {
 		return emptyFigure("next-study", title, "there is no distribution of the next effect")
 	}
 	f := &nextStudy{p: p, r: p.Range, scale: effectScale{p.Size.Scale}, o: options(o), pens: scenarioPens(p.Range)}
@@ -49,6 +49,11 @@ func (f *nextStudy) domain() axis {
 			cover(c.Effect)
 		}
 	}
+	if len(f.r.Curve) < 2 {
+		for _, n := range f.p.Size.NeedCurve {
+			cover(n.Effect)
+		}
+	}
 	cover(f.scale.NoEffect)
 	for _, s := range f.r.Scenarios {
 		cover(s.Effect)
@@ -74,6 +79,13 @@ func (f *nextStudy) shownScenarios() []result.Scenario {
 func (f *nextStudy) density() (base float64) {
 	scenarios := f.shownScenarios()
 	const step = 15.0
+	if len(f.r.Curve) < 2 { // no evidence to draw: the scenarios' names stand over what they need
+		base = 14 + step*float64(len(scenarios))
+		for i, s := range scenarios {
+			f.scenarioLabel(s, 12+step*float64(i), base)
+		}
+		return base
+	}
 	top := 8 + step*float64(len(scenarios))
 	height := 112.0
 	base = top + height + 8
@@ -165,7 +177,7 @@ func (f *nextStudy) better(a, b float64) bool { return (a > b) == f.scale.Higher
 // holds it; it gives the height used.
 func (f *nextStudy) chanceLabels(base float64) float64 {
 	none := f.chanceAt(f.scale.NoEffect)
-	if none == nil {
+	if none == nil || len(f.r.Curve) < 2 {
 		return 0
 	}
 	type part struct {
@@ -257,11 +269,14 @@ func (f *nextStudy) axisLine(bottom float64) {
 }
 
 func (f *nextStudy) alt() string {
-	text := "Above, the distribution of the true effect in the next setting"
-	if d := f.r.Distribution; d != nil && d.Location != nil {
-		text += ", centred at " + f.scale.text(*d.Location)
+	text := "The people that each effect needs."
+	if len(f.r.Curve) > 1 {
+		text = "Above, the distribution of the true effect in the next setting"
+		if d := f.r.Distribution; d != nil && d.Location != nil {
+			text += ", centred at " + f.scale.text(*d.Location)
+		}
+		text += ". Below, the people that each effect needs."
 	}
-	text += ". Below, the people that each effect needs."
 	for _, s := range f.shownScenarios() {
 		n := "no size exists"
 		if c := caseOf(f.p, s.Name); c != nil && c.N != nil {

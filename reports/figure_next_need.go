@@ -11,7 +11,7 @@ func (f *nextStudy) need(base float64) float64 {
 	lo, hi := f.needLo, f.needHi
 	top := base + 34
 	used := 0.0
-	if f.chanceAt(f.scale.NoEffect) != nil {
+	if f.chanceAt(f.scale.NoEffect) != nil && len(f.r.Curve) > 1 {
 		used = 40
 	}
 	top += used

@@ -107,7 +107,10 @@ func (f *fixture) pool(p *result.Plan) {
 	for _, s := range studies {
 		q += (*s.Estimate - common) * (*s.Estimate - common) / *s.Variance
 	}
-	tau2 := math.Max(0, (q-float64(f.k-1))/(sw-sw2/sw))
+	tau2 := 0.0
+	if f.k > 1 {
+		tau2 = math.Max(0, (q-float64(f.k-1))/(sw-sw2/sw))
+	}
 	var rw, rwy float64
 	for _, s := range studies {
 		rw += 1 / (*s.Variance + tau2)
@@ -124,7 +127,10 @@ func (f *fixture) pool(p *result.Plan) {
 		Place: result.Place{File: "evidence.xlsx", Sheet: "Studies", Cell: fmt.Sprintf("row %d", f.k+5)},
 		Cells: []result.Cell{{Address: fmt.Sprintf("A%d", f.k+5), Heading: "Study", Meaning: "study", Text: "Conference abstract"}}})
 	f.scaleOfNext = math.Sqrt(tau2 + f.se*f.se)
-	i2 := math.Max(0, (q-df)/q)
+	i2 := 0.0
+	if q > df {
+		i2 = (q - df) / q
+	}
 	estimate := func(method string, e, se, crit float64, tau *float64) result.Pooled {
 		z := e / se
 		return result.Pooled{Method: method, Estimate: num(e), StandardError: num(se), DF: num(df), Statistic: num(z), P: num(2 * f.z.Survival(math.Abs(z))),
@@ -141,6 +147,9 @@ func (f *fixture) pool(p *result.Plan) {
 		Prediction: result.Prediction{Interval: &result.Interval{Level: 0.95, Lower: f.mean - t*f.scaleOfNext, Upper: f.mean + t*f.scaleOfNext, Method: "student-t"}, DF: num(df)},
 		Sentences:  []string{"Risk of bias is low in 6 studies of 12; those alone give a smaller average.", "No study reports the outcome after more than four weeks."}}
 	pool.Prediction.Shown = f.shownOf(f.mean, pool.Prediction.Interval.Lower, pool.Prediction.Interval.Upper)
+	if f.k < 3 {
+		pool.Prediction = result.Prediction{Why: "fewer than three studies can't say how far true effects differ"}
+	}
 	for i, name := range []string{"dersimonian-laird", "paule-mandel", "restricted-maximum-likelihood", "hunter-schmidt"} {
 		tt := tau2 * (1 + 0.12*float64(i))
 		pool.Estimators = append(pool.Estimators, result.Estimator{Name: name, TauSquared: num(tt), ISquared: num(i2), Estimate: num(f.mean + 0.004*float64(i)), Converged: true, Iterations: 4 * i,
@@ -162,6 +171,9 @@ func (f *fixture) pool(p *result.Plan) {
 	}
 	pool.SmallStudy[2].Points = []result.FunnelPoint{{Estimate: f.mean - sign(f.mean)*0.42, StandardError: 0.31}, {Estimate: f.mean - sign(f.mean)*0.3, StandardError: 0.27}}
 	for i, s := range studies[:f.k] {
+		if f.k == 1 {
+			break
+		}
 		w := *s.Weight
 		e := (f.mean - w**s.Estimate) / math.Max(1e-9, 1-w)
 		in := result.Influence{Row: s.Row, Study: s.Study, Estimate: num(e), Lower: num(e - 2*f.se), Upper: num(e + 2*f.se), TauSquared: num(tau2), Residual: num((*s.Estimate - f.mean) / math.Sqrt(*s.Variance+tau2)), ShareOfQ: num(w)}

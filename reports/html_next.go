@@ -10,7 +10,11 @@ func (w writer) next() *section {
 	if r == nil {
 		return nil
 	}
-	s := &section{ID: "next", Title: "What the next setting may hold, and what it would cost", Lead: w.nextLead()}
+	title := "What the next setting may hold, and what it would cost"
+	if len(r.Curve) < 2 {
+		title = "What each effect would need"
+	}
+	s := &section{ID: "next", Title: title, Lead: w.nextLead()}
 	margin := []note{}
 	if d := r.Distribution; d != nil && d.Words != "" {
 		margin = append(margin, note{"Distribution", upperFirst(d.Words) + ". It is of the true effect in a new setting; an observed result scatters wider."})
@@ -27,6 +31,9 @@ func (w writer) next() *section {
 
 func (w writer) nextLead() string {
 	r := w.p.Range
+	if w.p.Pool == nil {
+		return "There are no prior studies: the number rests on what would be worthwhile alone, and nobody has said how likely that is."
+	}
 	text := "The average is not the plan: the next study meets one true effect, not the mean of them."
 	for _, c := range r.Chances {
 		if sw := r.SmallestWorthwhile; sw != nil && c.Effect == sw.Effect {

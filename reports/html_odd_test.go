@@ -17,6 +17,7 @@ func oddPlans() map[string]*result.Plan {
 		odd[name] = p
 	}
 	odd["nothing at all"] = &result.Plan{}
+	odd["one study"], odd["two studies"] = inventedPlan(1, true), inventedPlan(2, false)
 	add("no evidence", func(p *result.Plan) {
 		p.Pool, p.Since, p.Size.Assurance = nil, nil, nil
 		p.Range.Curve, p.Range.AdjustedCurve, p.Range.Distribution, p.Range.Adjusted = nil, nil, nil, nil
