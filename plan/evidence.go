@@ -91,6 +91,7 @@ func (r *evidenceReader) pass(overrides map[string]string) error {
 	for i := range s.Records {
 		r.outcomes[i] = r.compute(&s.Records[i])
 	}
+	r.checkEstimates()
 	return nil
 }
 

@@ -212,3 +212,23 @@ func TestFindingsCarryCells(t *testing.T) {
 		t.Error("no file named, no error")
 	}
 }
+
+func TestChecksAcrossEstimates(t *testing.T) {
+	f := evidencePlan(t, "study,estimate,se\nA,0.5,0.1\nB,0.4,0.1\nC,-0.5,0.1\nD,0.3,0.1\nE,3.2,0.5\nF,0.1,0.2\nF,-0.6,0.2\n")
+	f.Pool.Scale = "standardized-mean-difference"
+	e := mustReadEvidence(t, f)
+	got := findingKinds(e.Findings)
+	if !strings.Contains(got, "effect-beyond-3-sd@B6") || !strings.Contains(got, "signs-differ-within-study@B8") || strings.Contains(got, "sign-against-the-rest") {
+		t.Error(got) // C and the second F are clearly below 0: no single one stands alone
+	}
+	f = evidencePlan(t, "study,estimate,se\nA,0.5,0.1\nB,0.4,0.1\nC,-0.5,0.1\nD,0.3,0.1\nE,0.6,0.1\nF,-0.1,0.2\n")
+	e = mustReadEvidence(t, f)
+	if got := findingKinds(e.Findings); !strings.Contains(got, "sign-against-the-rest@B4") {
+		t.Error(got)
+	}
+	for _, x := range e.Findings {
+		if x.Kind == "sign-against-the-rest" && (x.Text != "-0.5" || x.Study != "C") {
+			t.Errorf("%+v", x)
+		}
+	}
+}
