@@ -161,7 +161,7 @@ func (w *textWriter) poolFigures(p *result.Pool) {
 		}
 		est, ci := poolShown(p.Scale, m.Shown, m.Estimate, m.Interval)
 		how := m.Method
-		if m.Interval != nil {
+		if m.Interval != nil && m.Interval.Method != m.Method {
 			how = strings.Join([]string{m.Method, m.Interval.Method}, ", ")
 		}
 		w.wrapped(name, 16, fmt.Sprintf("%s (%s)%s  %s", est, ci, optionalP(m.P), how))
@@ -205,6 +205,8 @@ func (w *textWriter) smallStudy(p *result.Pool) {
 	w.blank()
 	w.line("Small-study checks and what each leaves of the average; none is the truth")
 	var rows [][]string
+	var notes []string
+	said := map[string][]string{}
 	for _, s := range p.SmallStudy {
 		left := ""
 		if s.Estimate != nil {
@@ -218,7 +220,20 @@ func (w *textWriter) smallStudy(p *result.Pool) {
 		if s.Why != "" {
 			note = "not available: " + s.Why
 		}
-		rows = append(rows, []string{s.Name, left, optional(s.P, pText), note})
+		rows = append(rows, []string{s.Name, left, optional(s.P, pText)})
+		if note != "" {
+			if len(said[note]) == 0 {
+				notes = append(notes, note)
+			}
+			said[note] = append(said[note], s.Name)
+		}
 	}
-	w.grid([]textColumn{{head: "check", most: 26}, {head: "leaves"}, {head: "p", right: true}, {head: "", most: 22}}, rows, nil, nil)
+	w.grid([]textColumn{{head: "check", most: 34}, {head: "leaves"}, {head: "p", right: true}}, rows, nil, nil)
+	for _, n := range notes {
+		who := strings.Join(said[n], ", ")
+		if len(said[n]) == len(p.SmallStudy) {
+			who = "all"
+		}
+		w.wrapped("", 2, who+": "+n)
+	}
 }

@@ -28,3 +28,34 @@ type Method struct {
 	Check     string   `json:"check"` // the published value that it is held against
 	Also      []string `json:"also"`  // other names that people look it up by
 }
+
+// Extractions holds two extractions of the same studies side by side: the document of `footing read --against --json`.
+type Extractions struct {
+	Schema      string                 `json:"schema"` // "footing/extractions/1"
+	Tool        Tool                   `json:"tool"`
+	A           string                 `json:"a"` // file names
+	B           string                 `json:"b"`
+	Studies     int                    `json:"studies"`  // in both
+	Compared    int                    `json:"compared"` // figures and judgements that at least one sheet states for a study in both
+	Equal       int                    `json:"equal"`
+	Differences []ExtractionDifference `json:"differences"`
+	OnlyA       []OnlyInOne            `json:"onlyA"`
+	OnlyB       []OnlyInOne            `json:"onlyB"`
+}
+
+// ExtractionDifference is one figure or judgement on which the sheets disagree.
+type ExtractionDifference struct {
+	Study   string `json:"study"`
+	Meaning string `json:"meaning"`
+	CellA   string `json:"cellA"`
+	TextA   string `json:"textA"`
+	CellB   string `json:"cellB"`
+	TextB   string `json:"textB"`
+}
+
+// OnlyInOne is a study that only one sheet has.
+type OnlyInOne struct {
+	Study string `json:"study"`
+	Row   int    `json:"row"`
+	Near  string `json:"near"` // label in the other sheet that is nearly the same
+}
