@@ -24,7 +24,7 @@ func TestSDLooksLikeSE(t *testing.T) {
 
 func TestDuplicates(t *testing.T) {
 	s := readCSVText(t, "study,n1,mean1,sd1,n2,mean2,sd2\nA,25,50,10,25,48,11\nB,25,50,10,25,48,11\nC,36,49,8,36,47,10\nC,30,51,8,36,47,10\nc ,31,51,8,37,47,10\n", Options{})
-	if got := kinds(s.Findings); got != "arms-by-number@A1 duplicate-row@row 3 several-rows-one-study@row 4 same-control-group@row 5" {
+	if got := kindsOf(s.Findings); got != "arms-by-number@A1 duplicate-row@row 3 several-rows-one-study@row 4 same-control-group@row 5" {
 		t.Error(got)
 	}
 	if !strings.Contains(s.Findings[2].What, "rows 4, 5, 6") {
@@ -41,12 +41,12 @@ func TestPercentages(t *testing.T) {
 		if s.Records[0].Reported().Treatment.Proportion.Value != 0.25 || b.Treatment.Proportion.Value != 0.125 || b.Control.Proportion.Value != 0.005 || b.Treatment.Proportion.Decimals != 3 {
 			t.Errorf("%s: %+v %+v", name, b.Treatment.Proportion, b.Control.Proportion)
 		}
-		if warned := strings.Contains(kinds(s.Findings), "percent-as-number"); warned != (name == "numbers") {
-			t.Errorf("%s: %s", name, kinds(s.Findings))
+		if warned := strings.Contains(kindsOf(s.Findings), "percent-as-number"); warned != (name == "numbers") {
+			t.Errorf("%s: %s", name, kindsOf(s.Findings))
 		}
 	}
 	s := readCSVText(t, "study,n1,risk 1,n2,risk 2\nA,48,0.25,50,0.3\nB,40,125,40,0.5\n", Options{})
-	if !strings.Contains(kinds(s.Findings), "value-out-of-range@C3") {
-		t.Error(kinds(s.Findings))
+	if !strings.Contains(kindsOf(s.Findings), "value-out-of-range@C3") {
+		t.Error(kindsOf(s.Findings))
 	}
 }

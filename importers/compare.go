@@ -10,34 +10,37 @@ import (
 // Comparison holds two extractions of the same studies side by side: two people read the same papers, and each
 // difference is for them to settle.
 type Comparison struct {
-	A, B        string // file names
-	Studies     int    // in both
-	Compared    int    // figures and judgements that at least one sheet states for a study in both
-	Equal       int
-	Differences []Difference
-	OnlyA       []Missing
-	OnlyB       []Missing
+	A           string       `json:"a"` // file names
+	B           string       `json:"b"`
+	Studies     int          `json:"studies"`  // in both
+	Compared    int          `json:"compared"` // figures and judgements that at least one sheet states for a study in both
+	Equal       int          `json:"equal"`
+	Differences []Difference `json:"differences"`
+	OnlyA       []Missing    `json:"onlyA"`
+	OnlyB       []Missing    `json:"onlyB"`
 }
 
 // Difference is one figure or judgement on which the sheets disagree; an empty text means that the sheet doesn't state it.
 type Difference struct {
-	Study        string // as in sheet A
-	Meaning      Meaning
-	CellA, CellB string // addresses, "" where there is no cell
-	TextA, TextB string // as typed
+	Study   string  `json:"study"` // as in sheet A
+	Meaning Meaning `json:"meaning"`
+	CellA   string  `json:"cellA"` // addresses, "" where there is no cell
+	CellB   string  `json:"cellB"`
+	TextA   string  `json:"textA"` // as typed
+	TextB   string  `json:"textB"`
 }
 
 // Missing is a study that only one sheet has.
 type Missing struct {
-	Study string
-	Row   int
-	Near  string // label in the other sheet that is nearly the same, "" when there is none
+	Study string `json:"study"`
+	Row   int    `json:"row"`
+	Near  string `json:"near"` // label in the other sheet that is nearly the same, "" when there is none
 }
 
 // Compare matches the studies of two sheets by label (the first row of a label with the first, the second with the
 // second, ...) and compares every figure and judgement by what it means, so that the sheets may be laid out differently.
 func Compare(a, b *Sheet) Comparison {
-	out := Comparison{A: a.File, B: b.File}
+	out := Comparison{A: a.File, B: b.File, Differences: []Difference{}, OnlyA: []Missing{}, OnlyB: []Missing{}}
 	index := map[string][]int{}
 	for i := range b.Records {
 		k := foldHeading(b.Records[i].Study)

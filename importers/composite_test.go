@@ -87,7 +87,7 @@ func TestCompositeCells(t *testing.T) {
 			}
 		}
 		if len(got) != len(c.want) {
-			t.Errorf("%s: %q gave %v, want %v (%s)", c.heading, c.cell, got, c.want, kinds(s.Findings))
+			t.Errorf("%s: %q gave %v, want %v (%s)", c.heading, c.cell, got, c.want, kindsOf(s.Findings))
 			continue
 		}
 		for m, v := range c.want {
@@ -114,7 +114,7 @@ func TestCompositeFindings(t *testing.T) {
 			found = found || f.Kind == c.kind && f.Place.Cell == "B2" && f.Text == c.cell
 		}
 		if found != (c.kind != "") {
-			t.Errorf("%s: %q gave %s, want %s", c.heading, c.cell, kinds(s.Findings), c.kind)
+			t.Errorf("%s: %q gave %s, want %s", c.heading, c.cell, kindsOf(s.Findings), c.kind)
 		}
 	}
 }

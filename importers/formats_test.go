@@ -24,7 +24,7 @@ func dump(s *Sheet) string {
 		rep := r.Reported()
 		fmt.Fprintf(&b, "  %+v\n  %+v\n  %+v\n", rep.Treatment.Mean, rep.Treatment.SD, rep.P)
 	}
-	b.WriteString(kinds(s.Findings))
+	b.WriteString(kindsOf(s.Findings))
 	return b.String()
 }
 

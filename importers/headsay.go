@@ -2,10 +2,12 @@ package importers
 
 import (
 	"fmt"
+	"slices"
 	"sort"
 	"strings"
 
 	"footing/internal/finding"
+	"footing/meta/effect"
 )
 
 // sayHeadings reports what was not understood, or only by a guess.
@@ -24,10 +26,20 @@ func (s *columnSet) sayHeadings(g *grid) {
 			s.sayHalf(g, c)
 		}
 	}
+	if c := s.find(Estimate); c != nil && c.u.scale == effect.StandardizedMeanDifference && isCohen(c.Typed) {
+		g.note(finding.Note, "d-as-printed", c.Cell, fmt.Sprintf("the values under %q are used as printed; if they carry no small-sample correction they are too large by the factor 1 + 3/(4 df - 1) or so", shorten(c.Typed)),
+			"give means and SDs, or Hedges' g, for small studies")
+	}
 	if len(weak) > 0 {
 		g.note(finding.Note, "arms-by-number", s.list[0].Cell, fmt.Sprintf("the headings %s name the groups by a number or a letter: the first is read as treatment, the second as control", strings.Join(weak, ", ")),
 			"name the columns in columns: if it is the other way round")
 	}
+}
+
+// isCohen: the heading speaks of d, not of g.
+func isCohen(typed string) bool {
+	words := headingWords(typed)
+	return slices.Contains(words, "cohens") || slices.Contains(words, "cohen") || slices.Contains(words, "d")
 }
 
 func (s *columnSet) sayNotUnderstood(g *grid, c column) {

@@ -66,7 +66,7 @@ func TestMessyVersionsAgree(t *testing.T) {
 		}
 		s := readCSVText(t, text, opt)
 		if got := gist(s); got != want {
-			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kinds(s.Findings))
+			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kindsOf(s.Findings))
 		}
 		for _, f := range s.Findings {
 			if f.Severity == "error" {
@@ -111,22 +111,22 @@ func TestMergedVersionsAgree(t *testing.T) {
 	}
 	s := mustRead(t, write(t, "merged.xlsx", b.Bytes()), Options{})
 	if got := gist(s); got != want {
-		t.Errorf("xlsx:\n%swant\n%s%s", got, want, kinds(s.Findings))
+		t.Errorf("xlsx:\n%swant\n%s%s", got, want, kindsOf(s.Findings))
 	}
-	if s.Layout != "one row per group" || !strings.Contains(kinds(s.Findings), "merged-cells") {
-		t.Errorf("%s %s", s.Layout, kinds(s.Findings))
+	if s.Layout != "one row per group" || !strings.Contains(kindsOf(s.Findings), "merged-cells") {
+		t.Errorf("%s %s", s.Layout, kindsOf(s.Findings))
 	}
 	for _, name := range []string{"merged.ods", "merged.xls"} {
 		s := mustRead(t, filepath.Join("testdata", name), Options{})
 		if got := gist(s); got != want {
-			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kinds(s.Findings))
+			t.Errorf("%s:\n%swant\n%s%s", name, got, want, kindsOf(s.Findings))
 		}
 	}
 }
 
 func TestSharedControl(t *testing.T) {
 	s := readCSVText(t, "study,arm,n,mean,sd\nA,low dose,10,5,2\nA,high dose,11,6,2\nA,placebo,12,4,2\nB,drug,10,5,2\nB,placebo,10,4,2\n", Options{})
-	if len(s.Records) != 3 || s.Records[0].Reported().Control.N.Value != 12 || s.Records[1].Reported().Control.N.Value != 12 || !strings.Contains(kinds(s.Findings), "shared-control@row 4") {
-		t.Errorf("%s %s", gist(s), kinds(s.Findings))
+	if len(s.Records) != 3 || s.Records[0].Reported().Control.N.Value != 12 || s.Records[1].Reported().Control.N.Value != 12 || !strings.Contains(kindsOf(s.Findings), "shared-control@row 4") {
+		t.Errorf("%s %s", gist(s), kindsOf(s.Findings))
 	}
 }

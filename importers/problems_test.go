@@ -197,7 +197,7 @@ func TestCellFindings(t *testing.T) {
 	s := mustRead(t, p, Options{})
 	want := "arms-by-number@A1 mixed-decimal-marks@D7 text-in-number-cell@B2 value-out-of-range@C3 value-out-of-range@D3 count-not-whole@E3 risk-of-bias-not-understood@F3 year-not-understood@G3 " +
 		"value-out-of-range@D6 date-in-number-cell@B7 text-in-number-cell@C7 p-of-zero@D7 formula-without-value@C8 hidden-rows formulas"
-	if got := kinds(s.Findings); got != want {
+	if got := kindsOf(s.Findings); got != want {
 		t.Errorf("findings\n%s\nwant\n%s", got, want)
 	}
 	for _, f := range s.Findings {

@@ -62,8 +62,8 @@ func readCSVText(t testing.TB, text string, opt Options) *Sheet {
 	return mustRead(t, write(t, "evidence.csv", []byte(text)), opt)
 }
 
-// kinds lists the findings as kind@cell.
-func kinds(fs []finding.Finding) string {
+// kindsOf lists the findings as kind@cell.
+func kindsOf(fs []finding.Finding) string {
 	var out []string
 	for _, f := range fs {
 		k := f.Kind
@@ -124,7 +124,7 @@ func TestReadWorkbook(t *testing.T) {
 	if b.Year != 2011 || b.Reported().Control.Mean.Value != 10.5 || b.Reported().Control.SD.Value != 4.2 || b.RiskOfBias != "some concerns" {
 		t.Errorf("%+v", b)
 	}
-	if got := kinds(s.Findings); got != "decimal-comma@F6 row-without-figures@row 7" {
+	if got := kindsOf(s.Findings); got != "decimal-comma@F6 row-without-figures@row 7" {
 		t.Errorf("findings %s", got)
 	}
 	if s.Headings[2].Meaning != "treatment mean" || !strings.Contains(s.Headings[2].Why, `"break"`) {
@@ -179,7 +179,7 @@ func TestRowNumbersOfText(t *testing.T) {
 
 func TestWindows1252(t *testing.T) {
 	s := readCSVText(t, "study,estimate,standard error\nM\xfcller,0.3,0.1\nGar\xe7on,0.2,0.1\n", Options{})
-	if s.Records[0].Study != "Müller" || kinds(s.Findings) != "encoding-guessed" || !strings.Contains(s.Findings[0].What, `"Müller"`) {
+	if s.Records[0].Study != "Müller" || kindsOf(s.Findings) != "encoding-guessed" || !strings.Contains(s.Findings[0].What, `"Müller"`) {
 		t.Errorf("%q %+v", s.Records[0].Study, s.Findings)
 	}
 	s = readCSVText(t, "study,estimate,standard error\nM\xfcller,0.3,0.1\n", Options{Encoding: "windows-1252"})

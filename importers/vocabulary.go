@@ -22,12 +22,12 @@ var phrases = buildPhrases()
 
 func buildPhrases() map[string]feature {
 	m := map[string]feature{}
-	add := func(f feature, list ...string) {
+	says := func(f feature, list ...string) {
 		for _, p := range list {
 			m[p] = f
 		}
 	}
-	base := func(b string, list ...string) { add(feature{base: b}, list...) }
+	base := func(b string, list ...string) { says(feature{base: b}, list...) }
 
 	// Words about the study. The number behind study sorts candidates for the label.
 	base("study", "study", "studies", "study id", "study name", "study label", "first author year", "author year", "authors year", "study author", "study year")
@@ -60,7 +60,7 @@ func buildPhrases() map[string]feature {
 	base("events", "events", "event", "event count", "number of events", "n events", "no of events", "cases", "responders", "successes", "deaths", "number with event", "n with event", "count", "counts", "positives", "affected", "relapses", "failures")
 	base("nonevents", "non events", "nonevents", "no event", "no events", "without event", "non event", "non responders", "nonresponders", "non cases", "survivors", "unaffected")
 	base("proportion", "proportion", "prop", "risk", "event rate", "percentage", "prevalence", "incidence proportion", "response rate", "event proportion", "success rate")
-	add(feature{percent: true}, "%", "percent", "per cent", "pct")
+	says(feature{percent: true}, "%", "percent", "per cent", "pct")
 	base("rate", "rate", "incidence rate", "incidence", "event rate per person time")
 	base("persontime", "person time", "person years", "persontime", "patient years", "exposure time", "time at risk", "follow up time", "person months", "person days")
 
@@ -71,15 +71,15 @@ func buildPhrases() map[string]feature {
 	base("level", "confidence level", "ci level", "level of ci", "conf level", "level of confidence", "confidence coefficient")
 	base("difference", "difference", "diff", "mean difference", "mean diff", "md", "difference in means", "difference of means", "difference between means", "raw difference", "raw mean difference", "unstandardized mean difference", "unstandardised mean difference", "between group difference", "group difference")
 	base("t", "t value", "t stat", "t statistic", "t test", "tval", "tvalue", "t ratio", "students t", "t score")
-	add(feature{base: "t", arm: "treatment", weak: true}, "t")
+	says(feature{base: "t", arm: "treatment", weak: true}, "t")
 	base("f", "f", "f value", "f stat", "f statistic", "f ratio", "fvalue", "f test", "anova f")
 	base("z", "z", "z value", "z stat", "z statistic", "z score", "zvalue")
 	base("chi", "chi square", "chi squared", "chi 2", "chi", "chi sq", "chisq", "chisquare", "x 2", "x squared", "chi square statistic", "chi 2 statistic")
 	base("df", "df", "d f", "degrees of freedom", "dof", "df 2", "df error", "error df", "residual df", "denominator df", "df residual", "df within", "df den")
 	base("df1", "df 1", "numerator df", "df between", "df num", "df effect", "numerator degrees of freedom")
 	base("p", "p", "p value", "pvalue", "p val", "pval", "significance", "sig", "probability", "prob", "exact p", "p level")
-	add(feature{base: "p", sides: 1}, "one sided p", "p one sided", "one tailed p", "p one tailed", "1 sided p", "1 tailed p", "p value one sided", "one sided p value", "p 1 sided", "p 1 tailed")
-	add(feature{base: "p", sides: 2}, "two sided p", "p two sided", "two tailed p", "p two tailed", "2 sided p", "2 tailed p", "p value two sided", "two sided p value", "p 2 sided", "p 2 tailed", "sig 2 tailed")
+	says(feature{base: "p", sides: 1}, "one sided p", "p one sided", "one tailed p", "p one tailed", "1 sided p", "1 tailed p", "p value one sided", "one sided p value", "p 1 sided", "p 1 tailed")
+	says(feature{base: "p", sides: 2}, "two sided p", "p two sided", "two tailed p", "p two tailed", "2 sided p", "2 tailed p", "p value two sided", "two sided p value", "p 2 sided", "p 2 tailed", "sig 2 tailed")
 	base("r", "r", "correlation", "corr", "pearson r", "pearsons r", "correlation coefficient", "pearson correlation", "r value", "cor", "pearson")
 	base("pbr", "point biserial r", "point biserial", "r pb", "rpb", "point biserial correlation")
 	base("eta", "eta squared", "eta 2", "eta sq", "partial eta squared", "partial eta 2", "eta square", "partial eta sq")
@@ -99,7 +99,7 @@ func buildPhrases() map[string]feature {
 
 	// Estimates whose heading names the scale.
 	scale := func(s effect.Scale, log bool, list ...string) {
-		add(feature{base: "estimate", scale: s, log: log}, list...)
+		says(feature{base: "estimate", scale: s, log: log}, list...)
 	}
 	scale(effect.StandardizedMeanDifference, false, "smd", "standardized mean difference", "standardised mean difference", "hedges g", "g", "hedge g", "std mean diff", "std mean difference", "standardized difference", "standardised difference", "standardized effect", "standardised effect", "cohens d", "cohen d", "d", "effect size d", "effect size g", "g hedges", "d cohen")
 	ratio := func(s effect.Scale, list ...string) {
@@ -124,17 +124,17 @@ func buildPhrases() map[string]feature {
 	scale(effect.FisherZ, false, "fisher z", "fishers z", "z fisher", "fisher transformed r", "z r")
 
 	// Arms.
-	add(feature{arm: "treatment"}, "treatment", "treated", "treat", "trt", "tx", "intervention", "interv", "int", "experimental", "exp", "expt", "active", "drug", "verum", "exposed", "training", "trained", "treatment group", "intervention group", "experimental group", "treated group", "treatment arm", "intervention arm", "active arm", "active group")
-	add(feature{arm: "control"}, "control", "controls", "ctrl", "con", "contr", "ctl", "cntrl", "placebo", "pbo", "comparator", "comparison", "usual care", "standard care", "care as usual", "waitlist", "wait list", "waiting list", "sham", "unexposed", "untreated", "untrained", "control group", "placebo group", "comparison group", "control arm", "placebo arm", "comparator arm", "standard treatment", "no treatment", "no intervention", "treatment as usual", "control condition")
-	add(feature{arm: "treatment", weak: true}, "1", "i", "e", "tr", "group 1", "arm 1", "grp 1", "g 1", "group i", "arm a", "group a")
-	add(feature{arm: "control", weak: true}, "2", "c", "group 2", "arm 2", "grp 2", "g 2", "group ii", "arm b", "group b")
+	says(feature{arm: "treatment"}, "treatment", "treated", "treat", "trt", "tx", "intervention", "interv", "int", "experimental", "exp", "expt", "active", "drug", "verum", "exposed", "training", "trained", "treatment group", "intervention group", "experimental group", "treated group", "treatment arm", "intervention arm", "active arm", "active group")
+	says(feature{arm: "control"}, "control", "controls", "ctrl", "con", "contr", "ctl", "cntrl", "placebo", "pbo", "comparator", "comparison", "usual care", "standard care", "care as usual", "waitlist", "wait list", "waiting list", "sham", "unexposed", "untreated", "untrained", "control group", "placebo group", "comparison group", "control arm", "placebo arm", "comparator arm", "standard treatment", "no treatment", "no intervention", "treatment as usual", "control condition")
+	says(feature{arm: "treatment", weak: true}, "1", "i", "e", "tr", "group 1", "arm 1", "grp 1", "g 1", "group i", "arm a", "group a")
+	says(feature{arm: "control", weak: true}, "2", "c", "group 2", "arm 2", "grp 2", "g 2", "group ii", "arm b", "group b")
 
 	// Sides of an interval, times of measurement.
-	add(feature{side: "lower"}, "lower", "low", "lo", "ll", "lcl", "lower limit", "lower bound", "lower ci", "ci lower", "ci low", "ci l", "l", "from", "lci", "lb", "ci lo", "lower cl", "cil", "ci ll", "lower confidence limit", "ci from", "ci lb", "left", "lower 95", "low ci", "cilow", "cilo", "cilower", "lowerci")
-	add(feature{side: "upper"}, "upper", "up", "hi", "high", "ul", "ucl", "upper limit", "upper bound", "upper ci", "ci upper", "ci high", "ci u", "u", "to", "uci", "ub", "ci hi", "upper cl", "ciu", "ci ul", "upper confidence limit", "ci to", "ci ub", "ci up", "right", "upper 95", "high ci", "ciup", "cihigh", "cihi", "ciupper", "upperci")
-	add(feature{time: "pre"}, "pre", "baseline", "pretest", "pre test", "pretreatment", "before", "bl", "initial", "at baseline", "t 0")
-	add(feature{time: "post"}, "post", "posttest", "post test", "final", "endpoint", "end point", "after", "follow up", "followup", "posttreatment", "at end", "end of study", "end", "outcome")
-	add(feature{time: "change"}, "change", "change score", "change from baseline", "gain", "change score s", "delta", "gain score")
+	says(feature{side: "lower"}, "lower", "low", "lo", "ll", "lcl", "lower limit", "lower bound", "lower ci", "ci lower", "ci low", "ci l", "l", "from", "lci", "lb", "ci lo", "lower cl", "cil", "ci ll", "lower confidence limit", "ci from", "ci lb", "left", "lower 95", "low ci", "cilow", "cilo", "cilower", "lowerci")
+	says(feature{side: "upper"}, "upper", "up", "hi", "high", "ul", "ucl", "upper limit", "upper bound", "upper ci", "ci upper", "ci high", "ci u", "u", "to", "uci", "ub", "ci hi", "upper cl", "ciu", "ci ul", "upper confidence limit", "ci to", "ci ub", "ci up", "right", "upper 95", "high ci", "ciup", "cihigh", "cihi", "ciupper", "upperci")
+	says(feature{time: "pre"}, "pre", "baseline", "pretest", "pre test", "pretreatment", "before", "bl", "initial", "at baseline", "t 0")
+	says(feature{time: "post"}, "post", "posttest", "post test", "final", "endpoint", "end point", "after", "follow up", "followup", "posttreatment", "at end", "end of study", "end", "outcome")
+	says(feature{time: "change"}, "change", "change score", "change from baseline", "gain", "change score s", "delta", "gain score")
 	return m
 }
 

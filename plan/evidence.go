@@ -63,7 +63,18 @@ func (r *evidenceReader) pass(overrides map[string]string) error {
 	if f.Path != "" && !filepath.IsAbs(path) {
 		path = filepath.Join(filepath.Dir(f.Path), path)
 	}
-	opt := importers.Options{SheetName: f.Evidence.Sheet, Columns: f.Evidence.Columns, Groups: f.Study.Groups, Name: f.Evidence.File, Overrides: overrides}
+	opt := importers.Options{SheetName: f.Evidence.Sheet, Columns: f.Evidence.Columns, Groups: f.Study.Groups, Name: f.Evidence.File, Overrides: overrides,
+		Encoding: f.Evidence.Encoding}
+	switch foldWords(f.Evidence.DecimalMark) {
+	case "":
+	case ".", "point":
+		opt.Decimal = "."
+	case ",", "comma":
+		opt.Decimal = ","
+	default:
+		return &finding.Problem{Finding: finding.Finding{Severity: finding.Error, Kind: "decimal-mark-unknown", Place: finding.Place{File: f.Path},
+			What: fmt.Sprintf("evidence: decimal mark: %q is none", f.Evidence.DecimalMark), Mend: "write point or comma"}}
+	}
 	if h := strings.TrimSpace(f.Pool.Relevance); h != "" && !strings.EqualFold(h, string(importers.Relevance)) {
 		opt.Columns = map[string]string{string(importers.Relevance): h}
 		for k, v := range f.Evidence.Columns {

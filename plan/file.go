@@ -29,7 +29,9 @@ type File struct {
 type Evidence struct {
 	File         string            `yaml:"file"`
 	Sheet        string            `yaml:"sheet"`
-	Columns      map[string]string `yaml:"columns"` // meaning: heading as typed
+	Columns      map[string]string `yaml:"columns"`      // meaning: heading as typed
+	Encoding     string            `yaml:"encoding"`     // of a text file, where it isn't found out: utf-8, windows-1252, ...
+	DecimalMark  string            `yaml:"decimal mark"` // "." or ",", where it isn't found out
 	HigherBetter *bool             `yaml:"higher is better"`
 	Favours      string            `yaml:"favours"` // the direction in the reader's words: "better with a break"
 	KeepWhere    []string          `yaml:"keep where"`
