@@ -69,8 +69,10 @@ func parseComposite(text string, mark decimalMark) (composite, bool) {
 
 // compositeMark looks for a decimal comma inside a composite cell: one or two digits behind a comma, and no point.
 func compositeMark(s string) decimalMark {
-	if strings.Contains(s, ".") {
-		return '.'
+	for i := 1; i < len(s); i++ {
+		if s[i-1] == '.' && isDigit(s[i]) {
+			return '.'
+		}
 	}
 	for i := 1; i < len(s); i++ {
 		if s[i] != ',' || !isDigit(s[i-1]) {

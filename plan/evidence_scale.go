@@ -3,6 +3,8 @@ package plan
 import (
 	"fmt"
 	"math"
+	"slices"
+	"strings"
 
 	"footing/importers"
 	"footing/internal/finding"
@@ -161,6 +163,9 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 		opt.LowerBetter = !*h
 	}
 	got := effect.Compute(rec.Study, rec.Reported(), opt)
+	if got.Best != nil { // a p or F without a sign is no fault where other figures give the effect
+		got.Findings = slices.DeleteFunc(got.Findings, func(f finding.Finding) bool { return strings.HasSuffix(f.Kind, "-without-direction") })
+	}
 	o := outcome{findings: r.locate(rec, got.Findings)}
 	if got.Best == nil {
 		o.why = "no figure in the row leads to an estimate"

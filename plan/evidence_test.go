@@ -40,10 +40,10 @@ func findingKinds(fs []finding.Finding) string {
 	return strings.Join(out, " ")
 }
 
-const bare = "study,year,estimate,standard error,risk of bias,setting,status\nA,2001,0.31,0.12,low,ward,\nB,2005,0.10,0.20,high,home,\nC,2009,0.25,0.1,,ward,excluded\nD,,0.4,0.3,some concerns,office,example\n"
+const bareSheet = "study,year,estimate,standard error,risk of bias,setting,status\nA,2001,0.31,0.12,low,ward,\nB,2005,0.10,0.20,high,home,\nC,2009,0.25,0.1,,ward,excluded\nD,,0.4,0.3,some concerns,office,example\n"
 
 func TestReadEvidenceBare(t *testing.T) {
-	e := mustReadEvidence(t, evidencePlan(t, bare))
+	e := mustReadEvidence(t, evidencePlan(t, bareSheet))
 	if e.Scale != effect.AsGiven || len(e.Studies) != 4 || len(e.Estimates) != 3 || e.Index[2] != 3 {
 		t.Fatalf("%v %d %d %v", e.Scale, len(e.Studies), len(e.Estimates), e.Index)
 	}
@@ -71,7 +71,7 @@ func TestKeepWhere(t *testing.T) {
 		"year >= 2005": "B", "year > 2001": "B", "year < 2005": "A", "year = 2001": "A", "year != 2001": "BD", "risk of bias != high": "AD", "risk of bias = low": "A",
 		"setting in ward, home": "AB", "setting in [ward, office]": "AD", "setting not in (ward)": "BD", `setting = "Ward"`: "A", "estimate <= 0.31": "AB", "standard error<0.25": "AB", "year ≥ 2005": "B",
 	} {
-		f := evidencePlan(t, bare)
+		f := evidencePlan(t, bareSheet)
 		f.Evidence.KeepWhere = []string{cond}
 		var got string
 		for _, s := range mustReadEvidence(t, f).Studies {
@@ -86,7 +86,7 @@ func TestKeepWhere(t *testing.T) {
 		}
 	}
 	for _, cond := range []string{"year", "colour = red", "setting > ward", "= 3"} {
-		f := evidencePlan(t, bare)
+		f := evidencePlan(t, bareSheet)
 		f.Evidence.KeepWhere = []string{cond, "nothing"}
 		var ps finding.Problems
 		if _, err := ReadEvidence(f); !errors.As(err, &ps) || len(ps) != 2 {
@@ -106,7 +106,7 @@ func TestScaleByWhatTheColumnsHold(t *testing.T) {
 		"ratio":  {"study,odds ratio,ci lower,ci upper\nA,0.5,0.25,1\n", effect.LogOddsRatio, math.Log(0.5)},
 		"log":    {"study,log HR,se\nA,-0.2,0.1\n", effect.LogHazardRatio, -0.2},
 		"r":      {"study,r,n\nA,0.5,28\n", effect.FisherZ, math.Atanh(0.5)},
-		"bare":   {"study,estimate,se\nA,0.2,0.1\n", effect.AsGiven, 0.2},
+		"bareSheet":   {"study,estimate,se\nA,0.2,0.1\n", effect.AsGiven, 0.2},
 		// g = J(38) x (11 - 10)/2 with both SDs 2; J(38) = Gamma(19)/(sqrt(19) Gamma(18.5)) (Hedges 1981), its value by mpmath.
 		"means": {"study,n1,mean1,sd1,n2,mean2,sd2\nA,20,11,2,20,10,2\n", effect.StandardizedMeanDifference, 0.5 * 0.980110402130946272803435806123},
 	} {
@@ -123,7 +123,7 @@ func TestScaleByWhatTheColumnsHold(t *testing.T) {
 			t.Errorf("%s: shown %+v", name, e.Studies[0].Shown)
 		}
 	}
-	f := evidencePlan(t, bare)
+	f := evidencePlan(t, bareSheet)
 	f.Pool.Scale = "odd ratio"
 	if _, err := ReadEvidence(f); err == nil || !strings.Contains(err.Error(), "log-odds-ratio") {
 		t.Errorf("%v", err)
@@ -158,7 +158,7 @@ func TestDecisions(t *testing.T) {
 	if e := mustReadEvidence(t, changed); e.Studies[0].Used || !strings.Contains(findingKinds(e.Findings), "decision-out-of-date") {
 		t.Errorf("%+v %s", e.Studies[0], findingKinds(e.Findings))
 	}
-	unused := evidencePlan(t, bare)
+	unused := evidencePlan(t, bareSheet)
 	unused.Evidence.Decisions = f.Evidence.Decisions[:1]
 	if e := mustReadEvidence(t, unused); !strings.Contains(findingKinds(e.Findings), "decision-unused") {
 		t.Errorf("%s", findingKinds(e.Findings))
