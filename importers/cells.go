@@ -59,7 +59,18 @@ func (r *recordReader) readFigure(rec *Record, c *cell, k int, at string) {
 		r.sayFault(rec, c, col, at, fault)
 		return
 	}
-	r.store(rec, col.Meaning, n, c, col, at)
+	m := col.Meaning
+	if arm, ok := strings.CutSuffix(string(m), "events"); ok && (n.percent || c.kind == percentCell) && arm != "total " && !strings.HasSuffix(arm, "non-") {
+		m = Meaning(arm) + "proportion"
+	} else if n.percent && !isShare(m) {
+		r.tell(finding.Note, "percent-sign", rec, at, c.text, fmt.Sprintf("%q was read as %s", shorten(c.text), strconv.FormatFloat(n.value/100, 'g', -1, 64)), "")
+	}
+	r.store(rec, m, n, c, col, at)
+}
+
+// isShare: meanings for which a percent sign is nothing special.
+func isShare(m Meaning) bool {
+	return m == CILevel || m == Relevance || m == P || m == "icc" || strings.HasSuffix(string(m), "proportion")
 }
 
 // store keeps one number of a cell as the figure m.
@@ -155,7 +166,7 @@ func (r *recordReader) sayFault(rec *Record, c *cell, col *column, at string, fa
 func scaleFigure(f *effect.Figure, m Meaning, n number, c *cell, col *column) {
 	share := m == CILevel || m == Relevance || strings.HasSuffix(string(m), "proportion")
 	percent := n.percent || col.u.percent && c.kind != percentCell || m == CILevel && f.Value > 1
-	if share && percent || n.percent && (m == P || m == "icc") {
+	if share && percent || n.percent {
 		f.Value /= 100
 		if f.Decimals >= 0 {
 			f.Decimals += 2

@@ -72,6 +72,9 @@ func TestCompositeCells(t *testing.T) {
 		{"n, mean (SD) control", "24, 12.3 (4.5)", map[Meaning]float64{"control n": 24, "control mean": 12.3, "control sd": 4.5}},
 		{"Effect size (SE)", "0.45 (0.12)", map[Meaning]float64{"estimate": 0.45, "standard error": 0.12}},
 		{"MD (95% CI)", "-1.2 (-2.5 to 0.1)", map[Meaning]float64{"mean difference": -1.2, "difference ci lower": -2.5, "difference ci upper": 0.1}},
+		{"n (treatment/control)", "24/25", map[Meaning]float64{"treatment n": 24, "control n": 25}},
+		{"events control", "25%", map[Meaning]float64{"control proportion": 0.25}},
+		{"mean control", "12%", map[Meaning]float64{"control mean": 0.12}},
 		{"mean control", "12.3 (4.5)", map[Meaning]float64{"control mean": 12.3}},
 	} {
 		tab := Table{Columns: []NewColumn{{Heading: "study"}, {Heading: c.heading}, {Heading: "year"}}, Rows: [][]any{{"A", c.cell, 2001}}}

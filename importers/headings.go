@@ -184,8 +184,8 @@ func (f feature) alternative(phrase string, n, all int) feature {
 
 // bases maps the sorted figures of a heading to the meaning; "arm " before it takes an arm, "side " a side.
 var bases = map[string]string{
-	"study": "study", "study2": "study", "study3": "study", "study+year": "study", "study+study2": "study", "study+study3": "study", "study3+year": "study", "study2+year": "study", "study2+study3": "study",
-	"year": "year", "risk": "risk of bias", "relevance": "relevance", "subgroup": "subgroup", "status": "status",
+	"study": "study",
+	"year":  "year", "risk": "risk of bias", "relevance": "relevance", "subgroup": "subgroup", "status": "status",
 	"notes": "notes", "direction": "direction", "better": "higher is better", "scale": "scale", "sides": "sides", "p+sides": "p",
 	"mean": "arm mean", "sd": "arm sd", "se": "arm se", "n": "arm n", "total": "arm n", "n+total": "arm n",
 	"mean+sd": "", "median": "arm median", "q1": "arm q1", "q3": "arm q3", "min": "arm min", "max": "arm max",
@@ -243,11 +243,32 @@ func (u *understood) compose(fs []feature) bool {
 	if len(list) > 1 && !slices.Contains(list, "n") && !slices.Contains(list, "events") {
 		list = slices.DeleteFunc(list, func(b string) bool { return b == "total" }) // "overall" beside another figure
 	}
+	list = u.labels(list)
 	key := strings.Join(list, "+")
 	u.scale, u.log = f.scale, f.log
-	u.rank = strings.Count(key, "2") + 2*strings.Count(key, "3")
 	return u.name(key, f, percent)
 }
+
+// labels joins "author", "year" and their like to the one word study; the plainest word decides the rank.
+func (u *understood) labels(list []string) []string {
+	best := 10
+	for _, b := range list {
+		rank, ok := labelRanks[b]
+		if !ok && b != "year" {
+			return list
+		}
+		if ok {
+			best = min(best, rank)
+		}
+	}
+	if best == 10 {
+		return list
+	}
+	u.rank = best
+	return []string{"study"}
+}
+
+var labelRanks = map[string]int{"study": 0, "study2": 1, "study3": 2, "study4": 3}
 
 // name turns the sorted figures, arm, side and time of a heading into its meaning.
 func (u *understood) name(key string, f feature, percent bool) bool {

@@ -33,6 +33,8 @@ func TestUnderstand(t *testing.T) {
 		"Effect size (SE)": "estimate + standard error", "Median (IQR) control": "control median + control q1 + control q3", "median [range], treatment": "treatment median + treatment min + treatment max",
 		"n/N treatment": "treatment events + treatment n", "Events/total control": "control events + control n", "n (%) control": "control events + control proportion", "N, mean (SD) control": "control n + control mean + control sd",
 		"mean change (SD) treatment": "treatment change mean + treatment change sd", "Mean (95% CI) control": "control mean + control ci lower + control ci upper", "events of n, control": "control events + control n",
+		"Mittelwert (Kontrolle)": "control mean", "Standardabweichung Kontrollgruppe": "control sd", "Année": Year, "Étude": Study, "Écart-type (témoin)": "control sd", "ID": Study,
+		"N (treatment/control)": "treatment n + control n", "Events (T/C)": "treatment events + control events",
 		"mean t": "treatment mean", "sd c": "control sd", "MEAN-E": "treatment mean", "group 1 mean": "treatment mean", "group 2 SD": "control sd", "Arm A n": "treatment n", "Arm B n": "control n",
 	} {
 		u, ok := understand(typed, nil)

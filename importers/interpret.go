@@ -46,6 +46,7 @@ func interpret(g *grid, opt Options) (*Sheet, error) {
 		s.Records = r.joinArms(s.Records, k, opt.Groups)
 		g.note(finding.Note, "one-row-per-group", set.list[k].Cell, fmt.Sprintf("each row holds one group of a study, named in column %s; %d rows make %d comparisons", columnName(set.list[k].Column), rows, len(s.Records)), "")
 	}
+	tellApart(s.Records)
 	if len(s.Records) == 0 {
 		return nil, problem("no-records", g.place(g.rows[set.row].name()), "there is no row with figures under the headings", "put one row for each prior study under them")
 	}
@@ -90,7 +91,24 @@ func noHeadings(g *grid, mp mapping, opt Options) error {
 	if len(seen) > 0 {
 		what += "; the first cells are " + strings.Join(seen, ", ")
 	}
+	if words := headingsInColumn(g); words >= 3 {
+		what += "; the first column holds headings, so the studies seem to stand in columns"
+		mend = "turn the table round, so that each study has a row (copy, then paste transposed)"
+	}
 	return problem("no-headings", g.place(""), what, mend)
+}
+
+// headingsInColumn counts the cells of the first column that are understood as headings.
+func headingsInColumn(g *grid) int {
+	n := 0
+	for i := 0; i < len(g.rows) && i < 60; i++ {
+		if c, ok := g.rows[i].at(1); ok && c.kind == textCell && len(c.text) <= 200 {
+			if u, ok := understand(c.text, nil); ok && u.rest == "" {
+				n++
+			}
+		}
+	}
+	return n
 }
 
 // missingMapped reports headings that columns: names but the sheet doesn't have.

@@ -53,6 +53,7 @@ var kinds = map[string]string{
 	"formulas":                "the values stored with formulas were used",
 
 	// Rows.
+	"second-table":            "the sheet holds a second table, which was not read",
 	"total-row":               "a row of totals was passed over",
 	"row-without-figures":     "a row without figures was passed over",
 	"row-longer-than-heading": "a row of a text file was cut into too many cells",
@@ -76,6 +77,7 @@ var kinds = map[string]string{
 	"count-not-whole":       "a number of people or events is not whole",
 	"p-of-zero":             "a p printed as 0 was read as a bound",
 	"percent-as-number":     "shares above 1 were read as percentages",
+	"percent-sign":          "a number with a percent sign was read as a hundredth",
 	"sign-behind-number":    "stars or footnote signs were left off a number",
 	"second-figure-unclear": "the number in brackets may be an SD or a standard error",
 	"limits-in-wrong-order": "the lower limit is above the upper one",

@@ -130,3 +130,23 @@ func TestSharedControl(t *testing.T) {
 		t.Errorf("%s %s", gist(s), kindsOf(s.Findings))
 	}
 }
+
+func TestLabelsToldApart(t *testing.T) {
+	s := readCSVText(t, "id,author,year,estimate,se\n1,Smith,2001,0.1,0.1\n2,Smith,2004,0.2,0.1\n3,Jones,2004,0.3,0.1\n4,Jones,2004,0.4,0.1\n", Options{})
+	var got []string
+	for _, r := range s.Records {
+		got = append(got, r.Study)
+	}
+	if strings.Join(got, ",") != "Smith 2001,Smith 2004,Jones,Jones" || kindsOf(s.Findings) != "several-rows-one-study@row 4" {
+		t.Errorf("%q %s", got, kindsOf(s.Findings))
+	}
+}
+
+func TestSecondTable(t *testing.T) {
+	s := readCSVText(t, "study,estimate,se\nA,0.1,0.1\nB,0.2,0.1\n\nstudy,n,p\nC,20,0.3\nD,30,0.2\n", Options{})
+	if len(s.Records) != 2 || kindsOf(s.Findings) != "second-table@row 5" || s.Findings[0].Severity != "error" {
+		t.Errorf("%s %s", gist(s), kindsOf(s.Findings))
+	}
+	_, err := Read(write(t, "turned.csv", []byte("study,Adams,Brown\nyear,2001,2002\nestimate,0.1,0.2\nse,0.1,0.1\n")), Options{})
+	wantProblem(t, err, "no-headings", "stand in columns")
+}

@@ -162,6 +162,11 @@ func (r *recordReader) readAll() []Record {
 	rows := r.g.rows[r.set.row+1:]
 	out := make([]Record, 0, len(rows))
 	for i := range rows {
+		if r.startsTable(&rows[i]) {
+			r.tell(finding.Error, "second-table", &Record{}, rows[i].name(), rows[i].cells[0].text, fmt.Sprintf("the row looks like the headings of a second table; it and the %d rows below it were not read", len(rows)-i-1),
+				"put each table on a sheet of its own")
+			break
+		}
 		if rec, ok := r.read(&rows[i]); ok {
 			out = append(out, rec)
 		}
@@ -172,6 +177,29 @@ func (r *recordReader) readAll() []Record {
 		}
 	}
 	return out
+}
+
+// startsTable: words only, in at least three cells, at least half of them headings of other columns than those they stand in.
+func (r *recordReader) startsTable(row *row) bool {
+	if len(row.cells) < 3 {
+		return false
+	}
+	heads := 0
+	for i := range row.cells {
+		c := &row.cells[i]
+		if c.kind != textCell || len(c.text) > 60 || c.text[0] >= '-' && c.text[0] <= '9' {
+			return false
+		}
+	}
+	for i := range row.cells {
+		c := &row.cells[i]
+		if u, ok := understand(c.text, nil); ok && u.rest == "" {
+			if k := r.set.index(int(c.column)); k < 0 || r.set.list[k].Meaning != u.meaning {
+				heads++
+			}
+		}
+	}
+	return heads >= 2 && heads*2 >= len(row.cells)
 }
 
 // tell adds a finding about a cell of a record.

@@ -29,14 +29,16 @@ var severalPlain = map[string]string{
 func (u *understood) composeSeveral(fs []feature, marked bool) bool {
 	var f feature
 	var list []string
-	weak := false
+	weak, second := false, ""
 	for i, g := range fs {
 		switch {
 		case g.side != "":
 			return false
 		case g.arm != "" && (g.base == "" || i > 0 && g.weak):
 			if f.arm != "" && f.arm != g.arm {
-				return false
+				second = g.arm
+				weak = weak || g.weak
+				continue
 			}
 			f.arm, weak = g.arm, g.weak
 		case g.percent:
@@ -51,6 +53,14 @@ func (u *understood) composeSeveral(fs []feature, marked bool) bool {
 		}
 	}
 	key := strings.Join(list, " ")
+	if second != "" { // "n (treatment/control)"
+		form, armed := strings.CutPrefix(bases[key], "arm ")
+		if !armed || !marked || f.time != "" {
+			return false
+		}
+		u.meaning, u.weakArm = joinMeanings(Meaning(f.arm+" "+form), Meaning(second+" "+form)), weak
+		return true
+	}
 	form, armed := severalForms[key]
 	if !armed && marked {
 		form, armed = severalForms["!"+key]

@@ -30,25 +30,26 @@ func buildPhrases() map[string]feature {
 	base := func(b string, list ...string) { says(feature{base: b}, list...) }
 
 	// Words about the study. The number behind study sorts candidates for the label.
-	base("study", "study", "studies", "study id", "study name", "study label", "first author year", "author year", "authors year", "study author", "study year")
+	base("study", "study", "studies", "study id", "study name", "study label", "first author year", "author year", "authors year", "study author", "study year", "studie", "etude", "estudio", "studio", "estudo", "undersokelse")
 	base("study2", "trial", "trial name", "trial id", "paper", "article", "publication", "label", "experiment")
-	base("study3", "author", "authors", "first author", "name", "reference", "ref", "citation", "source", "id", "record", "record id")
-	base("year", "year", "yr", "publication year", "year of publication", "pub year", "year published", "publication date")
+	base("study3", "author", "authors", "first author", "name", "reference", "ref", "citation", "source", "title of study", "autor", "autoren", "auteur", "auteurs", "autores", "autore")
+	base("study4", "id", "record", "record id", "ref id", "refid", "study number", "study no")
+	base("year", "year", "yr", "publication year", "year of publication", "pub year", "year published", "publication date", "jahr", "annee", "ano", "anno", "jaar", "aar")
 	base("risk", "risk of bias", "rob", "overall risk of bias", "risk of bias overall", "rob overall", "overall rob", "bias risk", "risk of bias judgement", "risk of bias judgment")
 	base("relevance", "relevance", "relevance weight", "similarity", "closeness", "relevance 0 1")
 	base("subgroup", "subgroup", "sub group", "strata", "stratum", "subset")
 	base("status", "status", "state", "included", "include", "inclusion")
-	base("notes", "notes", "note", "comment", "comments", "remark", "remarks", "annotation")
+	base("notes", "notes", "note", "comment", "comments", "remark", "remarks", "annotation", "bemerkung", "bemerkungen", "notizen", "remarques", "notas", "opmerkingen")
 	base("direction", "direction", "direction of effect", "effect direction", "favours", "favors", "sign")
 	base("better", "higher is better", "higher better", "larger is better", "high is good", "higher is good", "better direction")
 	base("scale", "scale", "effect measure", "measure of effect", "effect type", "type of effect", "effect scale", "metric", "effect size type", "effect size measure")
 	base("sides", "sides", "tails", "sided", "tailed", "number of sides", "one or two sided")
 
 	// Figures of one group.
-	base("mean", "mean", "m", "means", "average", "avg", "mean score", "mean value", "x bar", "post test mean", "mw")
-	base("sd", "sd", "s d", "std", "stdev", "std dev", "st dev", "stddev", "standard deviation", "standard deviations", "std deviation", "standard dev", "sds", "std dev s")
-	base("se", "se", "s e", "sem", "s e m", "std err", "std error", "stderr", "standard error", "standard errors", "st error", "standard err", "standard error of the mean", "standard error mean", "std error of the mean")
-	base("n", "n", "sample size", "size", "sample", "number", "no", "num", "nr", "participants", "patients", "subjects", "people", "persons", "pupils", "students", "animals", "total n", "n total", "group size", "number of participants", "number of patients", "number of subjects", "number of people", "no of participants", "no of patients", "no of subjects", "n participants", "n patients", "n subjects", "n analysed", "n analyzed", "number analysed", "number analyzed", "n randomised", "n randomized", "number randomised", "number randomized", "total sample size", "total sample", "total number", "total participants", "total patients", "total people", "denominator", "overall n", "n overall")
+	base("mean", "mean", "m", "means", "average", "avg", "mean score", "mean value", "x bar", "post test mean", "mw", "mittelwert", "mittel", "moyenne", "media", "gemiddelde")
+	base("sd", "sd", "s d", "std", "stdev", "std dev", "st dev", "stddev", "standard deviation", "standard deviations", "std deviation", "standard dev", "sds", "std dev s", "standardabweichung", "stabw", "ecart type", "desviacion estandar", "desviacion tipica", "deviazione standard", "standaarddeviatie")
+	base("se", "se", "s e", "sem", "s e m", "std err", "std error", "stderr", "standard error", "standard errors", "st error", "standard err", "standard error of the mean", "standard error mean", "std error of the mean", "standardfehler", "erreur standard", "erreur type", "error estandar", "errore standard", "standaardfout")
+	base("n", "n", "sample size", "size", "sample", "number", "no", "num", "nr", "participants", "patients", "subjects", "people", "persons", "pupils", "students", "animals", "total n", "n total", "group size", "number of participants", "number of patients", "number of subjects", "number of people", "no of participants", "no of patients", "no of subjects", "n participants", "n patients", "n subjects", "n analysed", "n analyzed", "number analysed", "number analyzed", "n randomised", "n randomized", "number randomised", "number randomized", "total sample size", "total sample", "total number", "total participants", "total patients", "total people", "denominator", "overall n", "n overall", "anzahl", "effectif", "aantal", "numero", "stichprobe", "stichprobengrosse", "fallzahl")
 	base("total", "total", "totals", "sum", "overall", "all")
 	base("median", "median", "mdn", "med", "medians")
 	base("q1", "q 1", "lower quartile", "first quartile", "1 st quartile", "25 th percentile", "25 percentile", "p 25", "25 th centile", "quartile 1", "iqr lower", "lower iqr", "iqr low")
@@ -57,7 +58,7 @@ func buildPhrases() map[string]feature {
 	base("range", "range", "min max", "min to max", "minimum maximum")
 	base("min", "min", "minimum", "range min", "range lower", "smallest")
 	base("max", "max", "maximum", "range max", "range upper", "largest")
-	base("events", "events", "event", "event count", "number of events", "n events", "no of events", "cases", "responders", "successes", "deaths", "number with event", "n with event", "count", "counts", "positives", "affected", "relapses", "failures")
+	base("events", "events", "event", "event count", "number of events", "n events", "no of events", "cases", "responders", "successes", "deaths", "number with event", "n with event", "count", "counts", "positives", "affected", "relapses", "failures", "ereignisse", "evenements", "eventos", "eventi", "gebeurtenissen")
 	base("nonevents", "non events", "nonevents", "no event", "no events", "without event", "non event", "non responders", "nonresponders", "non cases", "survivors", "unaffected")
 	base("proportion", "proportion", "prop", "risk", "event rate", "percentage", "prevalence", "incidence proportion", "response rate", "event proportion", "success rate")
 	says(feature{percent: true}, "%", "percent", "per cent", "pct")
@@ -65,7 +66,7 @@ func buildPhrases() map[string]feature {
 	base("persontime", "person time", "person years", "persontime", "patient years", "exposure time", "time at risk", "follow up time", "person months", "person days")
 
 	// Figures of the comparison.
-	base("estimate", "estimate", "est", "effect", "effect size", "effect estimate", "es", "point estimate", "effect sizes", "treatment effect", "estimated effect", "effect value", "theta", "intervention effect")
+	base("estimate", "estimate", "est", "effect", "effect size", "effect estimate", "es", "point estimate", "effect sizes", "treatment effect", "estimated effect", "effect value", "theta", "intervention effect", "effekt", "effet", "efecto", "effetto", "schatzer", "schatzwert", "effektstarke")
 	base("variance", "variance", "var", "sampling variance", "v", "variance of estimate", "variance of the estimate", "effect variance")
 	base("ci", "ci", "c i", "confidence interval", "confidence limit", "confidence limits", "conf int", "interval", "cl", "confidence bound", "conf limit", "conf interval", "confint")
 	base("level", "confidence level", "ci level", "level of ci", "conf level", "level of confidence", "confidence coefficient")
@@ -124,8 +125,8 @@ func buildPhrases() map[string]feature {
 	scale(effect.FisherZ, false, "fisher z", "fishers z", "z fisher", "fisher transformed r", "z r")
 
 	// Arms.
-	says(feature{arm: "treatment"}, "treatment", "treated", "treat", "trt", "tx", "intervention", "interv", "int", "experimental", "exp", "expt", "active", "drug", "verum", "exposed", "training", "trained", "treatment group", "intervention group", "experimental group", "treated group", "treatment arm", "intervention arm", "active arm", "active group")
-	says(feature{arm: "control"}, "control", "controls", "ctrl", "con", "contr", "ctl", "cntrl", "placebo", "pbo", "comparator", "comparison", "usual care", "standard care", "care as usual", "waitlist", "wait list", "waiting list", "sham", "unexposed", "untreated", "untrained", "control group", "placebo group", "comparison group", "control arm", "placebo arm", "comparator arm", "standard treatment", "no treatment", "no intervention", "treatment as usual", "control condition")
+	says(feature{arm: "treatment"}, "treatment", "treated", "treat", "trt", "tx", "intervention", "interv", "int", "experimental", "exp", "expt", "active", "drug", "verum", "exposed", "training", "trained", "treatment group", "intervention group", "experimental group", "treated group", "treatment arm", "intervention arm", "active arm", "active group", "behandlung", "interventionsgruppe", "behandlungsgruppe", "traitement", "tratamiento", "trattamento", "behandeling", "interventie")
+	says(feature{arm: "control"}, "control", "controls", "ctrl", "con", "contr", "ctl", "cntrl", "placebo", "pbo", "comparator", "comparison", "usual care", "standard care", "care as usual", "waitlist", "wait list", "waiting list", "sham", "unexposed", "untreated", "untrained", "control group", "placebo group", "comparison group", "control arm", "placebo arm", "comparator arm", "standard treatment", "no treatment", "no intervention", "treatment as usual", "control condition", "kontrolle", "kontrollgruppe", "controle", "temoin", "temoins", "controllo", "controlegroep", "placebogruppe")
 	says(feature{arm: "treatment", weak: true}, "1", "i", "e", "tr", "group 1", "arm 1", "grp 1", "g 1", "group i", "arm a", "group a")
 	says(feature{arm: "control", weak: true}, "2", "c", "group 2", "arm 2", "grp 2", "g 2", "group ii", "arm b", "group b")
 
