@@ -150,3 +150,16 @@ func TestPictureScale(t *testing.T) {
 		t.Error("nothing was drawn")
 	}
 }
+
+// Every drawing fits a sheet of paper below its section's opening: at the width of A4 within its margins (180 mm),
+// or Letter's (186 mm), it is no higher than 235 mm, so that none is cut.
+func TestFiguresFitASheet(t *testing.T) {
+	for _, k := range []int{1, 12, 44, 45, 80, 150, 151, 1000} {
+		p := inventedPlan(k, false)
+		for _, f := range append(ForestFigures(p), Figures(p)[1:]...) {
+			if w, h := f.Size(); h/w*186 > 235 {
+				t.Errorf("%d studies: %s would be %.0f mm high", k, f.Name, h/w*186)
+			}
+		}
+	}
+}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"sort"
+	"strings"
 
 	"footing/plan/result"
 )
@@ -43,6 +44,9 @@ func (b barPlot) draw() scene {
 	name = math.Min(name, 200)
 	columns, detail := b.columns, b.detail
 	rowH := 24.0
+	if detail != "" {
+		rowH = 27
+	}
 	if b.o.narrow { // the name stands above its bar
 		name, rowH = 0, 40
 		if len(columns) > 1 {
@@ -71,7 +75,7 @@ func (b barPlot) draw() scene {
 		for _, r := range b.rows {
 			detailRoom = math.Max(detailRoom, textWidth(r.detail, 11, false))
 		}
-		detailRoom = math.Min(detailRoom, 165) + 14
+		detailRoom = math.Min(detailRoom, 175) + 14
 	}
 	if most := s.W - name - detailRoom - 160; room > most { // hostile or very long cells
 		room = most
@@ -163,12 +167,14 @@ func (b barPlot) drawRow(s *scene, x axis, r barRow, y, name, detailRoom float64
 		s.add(label(hi+5, y+4, r.right, inkText, 11.5).bold())
 	}
 	if detailRoom > 0 && r.detail != "" {
-		short, cut := clipText(r.detail, detailRoom-10, 11, false)
-		e := label(s.W, y+4, short, inkSoft, 11).end()
-		if cut {
-			e.Title = clipRunes(r.detail, 300)
+		lines := wrapText(clipRunes(r.detail, 200), detailRoom-10, 11, 2, false)
+		for i, text := range lines {
+			e := label(s.W, y+4+11.5*(float64(i)-float64(len(lines)-1)/2), text, inkSoft, 11).end()
+			if strings.HasSuffix(text, "…") {
+				e.Title = clipRunes(r.detail, 300)
+			}
+			s.add(e)
 		}
-		s.add(e)
 	}
 }
 

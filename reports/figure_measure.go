@@ -2,6 +2,7 @@ package reports
 
 import (
 	"math"
+	"strings"
 	"sync"
 	"unicode"
 	"unicode/utf8"
@@ -115,6 +116,24 @@ func clipped(x, y float64, text string, width float64, fill ink, size float64, b
 func above(y float64, text string, width float64, bold bool) element {
 	e := clipped(0, y, text, width, inkText, 12, bold)
 	return group("", rect(-1, y-10.5, math.Min(width, textWidth(e.Text, 12, bold)+2), 14, inkPaper).faded(0.88), e)
+}
+
+// twoLines is a name at the left of its row, on two lines of smaller letters where one is too short for it.
+func twoLines(y float64, text string, width float64, bold bool) []element {
+	if textWidth(clipRunes(text, 200), 12, bold) <= width {
+		return []element{clipped(0, y+4, text, width, inkText, 12, bold)}
+	}
+	var out []element
+	lines := wrapText(clipRunes(text, 200), width, 11.5, 2, bold)
+	for i, l := range lines {
+		e := label(0, y+4+13*(float64(i)-float64(len(lines)-1)/2), l, inkText, 11.5)
+		e.Bold = bold
+		if strings.HasSuffix(l, "…") {
+			e.Title = clipRunes(text, 300)
+		}
+		out = append(out, e)
+	}
+	return out
 }
 
 // clipRunes cuts a text to a number of characters, visibly.

@@ -31,11 +31,16 @@ func (r rowPlot) draw() scene {
 	for _, row := range r.rows {
 		nameRoom = math.Max(nameRoom, textWidth(row.name, 12, row.bold))
 	}
-	nameRoom = math.Min(nameRoom, 290)
+	const mostName = 290
+	two := nameRoom > mostName // some names take two lines
+	nameRoom = math.Min(nameRoom, mostName)
 	columns := r.columns
 	top, rowH := 22.0, 22.0
 	if len(r.rows) > 30 {
 		rowH = 17
+	}
+	if two && !r.o.narrow {
+		rowH = 30
 	}
 	if r.o.narrow { // the name stands above its line
 		nameRoom, rowH = 0, 36
@@ -106,7 +111,7 @@ func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
 		s.add(above(y-5, row.name, x.B, row.bold))
 		y += 8
 	} else {
-		s.add(clipped(0, y+4, row.name, nameRoom, inkText, 12, row.bold))
+		s.add(twoLines(y, row.name, nameRoom, row.bold)...)
 	}
 	if row.estimate == nil {
 		text, _ := clipText(row.why, x.B-x.A, 11, false)

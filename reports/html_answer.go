@@ -87,7 +87,7 @@ func answerOf(p *result.Plan) answer {
 		a.Aside = append(a.Aside, s)
 	}
 	for _, t := range p.Threats {
-		a.Threats = append(a.Threats, threat(t))
+		a.Threats = append(a.Threats, threat{proseText(t.Head), proseText(t.Text)})
 	}
 	if p.Undecided > 0 {
 		a.Small = append(a.Small, undecidedSentence(p))
@@ -96,7 +96,9 @@ func answerOf(p *result.Plan) answer {
 		a.Small = append(a.Small, fmt.Sprintf("Since edition %d: %s.", p.Since.From.Number, strings.TrimRight(p.Since.Line, ".")))
 	}
 	a.Small = append(a.Small, p.Cautions...)
-	a.Small = append(a.Small, "Power and assurance are chances if these assumptions hold, not promises.")
+	if !strings.Contains(strings.Join(p.Cautions, " "), "are chances if") {
+		a.Small = append(a.Small, "Power and assurance are chances if these assumptions hold, not promises.")
+	}
 	return a
 }
 
@@ -156,9 +158,9 @@ func targetSentence(p *result.Plan, c *result.Chosen) string {
 		text = fmt.Sprintf("%s is the smallest worthwhile effect", effectScale{p.Size.Scale}.text(w.Effect))
 		switch {
 		case w.Who != "" && w.Source != "":
-			text += fmt.Sprintf(", as %s sees it (%s)", clipRunes(w.Who, 80), clipRunes(w.Source, 80))
+			text += fmt.Sprintf(" (who says so: %s; source: %s)", clipRunes(w.Who, 80), clipRunes(w.Source, 80))
 		case w.Source != "":
-			text += " (" + clipRunes(w.Source, 80) + ")"
+			text += " (source: " + clipRunes(w.Source, 80) + ")"
 		default:
 			text += ", assumed: no source is given"
 		}

@@ -65,8 +65,8 @@ func (w writer) askedItems() []asked {
 	return append(h.evidenceItems(), h.sizeItems()...)
 }
 
-// at gives the section when the thing is there.
-func at(there bool, section string) string {
+// standsAt gives the section when the thing is there.
+func standsAt(there bool, section string) string {
 	if there {
 		return section
 	}
@@ -92,19 +92,19 @@ func (h presence) evidenceItems() []asked {
 		groups = "the plan asks for none"
 	}
 	items := []asked{
-		{"Primary outcome and comparison, with the attributes of the estimand", "DELTA2, ICH E9 and E9(R1)", at(len(h.st.Estimand) > 0, "size"), ""},
-		{"Search date, the rule for which studies count, studies used and left out", "DELTA2, PRISMA 13a", at(h.pool.Evidence.Searched != nil && h.pool.Evidence.Searched.Date != "" && h.pool.Evidence.Searched.Rule != "", "data"), none},
-		{"For each study what was reported, what was computed and how, imputed values marked", "PRISMA 13b and 19, Cochrane Handbook 6", at(len(h.pool.Studies) > 0, "data"), none},
-		{"Direction and scale aligned, reversals listed", "Cochrane Handbook 10", at(h.pool.Scale.Favours != "" || flipped, "data"), none},
-		{"How clusters, crossovers, several arms and repeated outcomes were handled in each study", "Cochrane Handbook 23", at(hasFinding(h.p, "cluster", "crossover", "same-study", "arms", "shared-control"), "data"), none},
-		{"Forest plot with people, effect, interval and weight of each study", "PRISMA 13c and 19", at(len(h.pool.Studies) > 0, "evidence"), none},
-		{"Common-effect and random-effects results, and why one is used", "PRISMA 13d and 20b", at(h.pool.Random.Estimate != nil && h.pool.Common.Estimate != nil, "evidence"), none},
-		{"Q, degrees of freedom, p, τ² and I² with intervals; a warning when studies are few", "PRISMA 20b, Cochrane Handbook 10", at(h.pool.Heterogeneity.Q != nil && h.pool.Heterogeneity.TauSquared != nil, "evidence"), none},
-		{"Prediction interval, or why it is withheld", "Cochrane Handbook 10", at(h.pool.Prediction.Interval != nil || h.pool.Prediction.Why != "", "evidence"), none},
-		{"Small-study and adjusted results; below ten studies no test, said plainly", "PRISMA 14 and 21, Cochrane Handbook 13", at(len(h.pool.SmallStudy) > 0, "inflated"), first(none, small)},
-		{"Subgroup or regression results, with the rule of ten studies for each covariate", "PRISMA 13e and 20c", at(len(h.pool.Subgroups) > 1, "evidence"), groups},
-		{"Sensitivity: leaving one study out, other models, other imputations", "PRISMA 13f and 20d", at(len(h.pool.Influence) > 0 || len(h.pool.Estimators) > 0, "evidence"), none},
-		{"Size of one adequately powered trial against the total so far", "GRADE imprecision", at(h.pool.Participants != nil && h.p.Size.Chosen != nil, "evidence"), none},
+		{"Primary outcome and comparison, with the attributes of the estimand", "DELTA2, ICH E9 and E9(R1)", standsAt(len(h.st.Estimand) > 0, "size"), ""},
+		{"Search date, the rule for which studies count, studies used and left out", "DELTA2, PRISMA 13a", standsAt(h.pool.Evidence.Searched != nil && h.pool.Evidence.Searched.Date != "" && h.pool.Evidence.Searched.Rule != "", "data"), none},
+		{"For each study what was reported, what was computed and how, imputed values marked", "PRISMA 13b and 19, Cochrane Handbook 6", standsAt(len(h.pool.Studies) > 0, "data"), none},
+		{"Direction and scale aligned, reversals listed", "Cochrane Handbook 10", standsAt(h.pool.Scale.Favours != "" || flipped, "data"), none},
+		{"How clusters, crossovers, several arms and repeated outcomes were handled in each study", "Cochrane Handbook 23", standsAt(hasFinding(h.p, "cluster", "crossover", "same-study", "arms", "shared-control"), "data"), none},
+		{"Forest plot with people, effect, interval and weight of each study", "PRISMA 13c and 19", standsAt(len(h.pool.Studies) > 0, "evidence"), none},
+		{"Common-effect and random-effects results, and why one is used", "PRISMA 13d and 20b", standsAt(h.pool.Random.Estimate != nil && h.pool.Common.Estimate != nil, "evidence"), none},
+		{"Q, degrees of freedom, p, τ² and I² with intervals; a warning when studies are few", "PRISMA 20b, Cochrane Handbook 10", standsAt(h.pool.Heterogeneity.Q != nil && h.pool.Heterogeneity.TauSquared != nil, "evidence"), none},
+		{"Prediction interval, or why it is withheld", "Cochrane Handbook 10", standsAt(h.pool.Prediction.Interval != nil || h.pool.Prediction.Why != "", "evidence"), none},
+		{"Small-study and adjusted results; below ten studies no test, said plainly", "PRISMA 14 and 21, Cochrane Handbook 13", standsAt(len(h.pool.SmallStudy) > 0, "inflated"), first(none, small)},
+		{"Subgroup or regression results, with the rule of ten studies for each covariate", "PRISMA 13e and 20c", standsAt(len(h.pool.Subgroups) > 1, "evidence"), groups},
+		{"Sensitivity: leaving one study out, other models, other imputations", "PRISMA 13f and 20d", standsAt(len(h.pool.Influence) > 0 || len(h.pool.Estimators) > 0, "evidence"), none},
+		{"Size of one adequately powered trial against the total so far", "GRADE imprecision", standsAt(h.pool.Participants != nil && h.p.Size.Chosen != nil, "evidence"), none},
 	}
 	return items
 }
@@ -125,23 +125,23 @@ func (h presence) sizeItems() []asked {
 		pilot = pilot || strings.Contains(strings.ToLower(a.Source), "pilot")
 	}
 	return []asked{
-		{"Target difference in natural units and standardized, or both proportions, or the control curve with follow-up and accrual", "DELTA2 3a to 3c", at(natural, "size"), ""},
-		{"Whether the target is important, realistic or both, who says so, and how it was found", "DELTA2, ICH E9 3.5", at(w != nil && w.Source != "" && w.Who != "", "answer"), ""},
-		{"Significance level, sides, power, test, allocation, null and working hypothesis", "DELTA2, ICH E9 3.5", at(h.st.Alpha > 0 && h.p.Size.Test.Words != "", "size"), ""},
-		{"Each nuisance value with its source and an interval", "ICH E9 3.5, CONSORT for clusters 7a", at(len(h.st.Assumptions) > 0 && allSourced(h.st.Assumptions), "data"), notTrial(len(h.st.Assumptions) > 0, "the test needs none")},
-		{"The size before and after each allowance, a line each, whole people in each group", "DELTA2 5, SPIRIT 19", at(c != nil && len(c.Trail) > 0, "size"), ""},
-		{"Size or power over a range of effects and of nuisance values; table and curve", "DELTA2, ICH E9 3.5", at(len(h.p.Size.Curves) > 0 && len(h.p.Size.Cases) > 1, "size"), ""},
-		{"The size at both 80 and 90% power", "SPIRIT 19, example", at(anyCase(h.p, func(k result.Case) bool { return k.At80 != nil && k.At90 != nil }), "size"), ""},
-		{"Smallest effect that would be significant, and smallest detectable, at the size", "Lakens 2022", at(c != nil && c.SmallestSignificant != nil && c.SmallestDetectable != nil, "size"), ""},
-		{"The kind of justification, named", "Lakens 2022", at(h.p.Justification != "", "size"), ""},
+		{"Target difference in natural units and standardized, or both proportions, or the control curve with follow-up and accrual", "DELTA2 3a to 3c", standsAt(natural, "size"), ""},
+		{"Whether the target is important, realistic or both, who says so, and how it was found", "DELTA2, ICH E9 3.5", standsAt(w != nil && w.Source != "" && w.Who != "", "answer"), ""},
+		{"Significance level, sides, power, test, allocation, null and working hypothesis", "DELTA2, ICH E9 3.5", standsAt(h.st.Alpha > 0 && h.p.Size.Test.Words != "", "size"), ""},
+		{"Each nuisance value with its source and an interval", "ICH E9 3.5, CONSORT for clusters 7a", standsAt(len(h.st.Assumptions) > 0 && allSourced(h.st.Assumptions), "data"), notTrial(len(h.st.Assumptions) > 0, "the test needs none")},
+		{"The size before and after each allowance, a line each, whole people in each group", "DELTA2 5, SPIRIT 19", standsAt(c != nil && len(c.Trail) > 0, "size"), ""},
+		{"Size or power over a range of effects and of nuisance values; table and curve", "DELTA2, ICH E9 3.5", standsAt(len(h.p.Size.Curves) > 0 && len(h.p.Size.Cases) > 1, "size"), ""},
+		{"The size at both 80 and 90% power", "SPIRIT 19, example", standsAt(anyCase(h.p, func(k result.Case) bool { return k.At80 != nil && k.At90 != nil }), "size"), ""},
+		{"Smallest effect that would be significant, and smallest detectable, at the size", "Lakens 2022", standsAt(c != nil && c.SmallestSignificant != nil && c.SmallestDetectable != nil, "size"), ""},
+		{"The kind of justification, named", "Lakens 2022", standsAt(h.p.Justification != "", "size"), ""},
 		{"Clusters: number, size, equal or not, intracluster correlation and how sure it is", "CONSORT for clusters 7a", "", notTrial(h.st.Arrangement == "clusters" || h.st.Arrangement == "stepped-wedge", "no clusters are planned")},
 		{"Interim looks, boundaries, what they cost", "CONSORT 16b", "", "no interim look is planned"},
-		{"The margin and its reason", "ICH E9 3.5", at(w != nil && w.Why != "", "answer"), notTrial(h.st.Aim == "non-inferiority" || h.st.Aim == "equivalence", "the aim is "+words(h.st.Aim))},
-		{"How people who leave are handled, in line with the estimand", "ICH E9 and E9(R1)", at(hasText(h.st.Estimand, "intercurrent"), "size"), ""},
-		{"Values that come from a pilot, flagged", "Leon, Davis & Kraemer 2011", at(pilot, "data"), notTrial(pilot, "no source names a pilot")},
-		{"Weaknesses of the prior research, and what the plan does about them", "NIH guidance on rigor", at(len(h.p.Threats) > 0, "answer"), ""},
-		{"Formula or simulation with its reference, seed, program and version", "DELTA2 5, PRISMA 13d", at(len(h.p.Methods) > 0 && h.p.Tool.Version != "", "data"), ""},
-		{"Wording ready for a protocol, a results paper and a grant", "DELTA2 8, JARS", at(c != nil, "words"), ""},
+		{"The margin and its reason", "ICH E9 3.5", standsAt(w != nil && w.Why != "", "answer"), notTrial(h.st.Aim == "non-inferiority" || h.st.Aim == "equivalence", "the aim is "+words(h.st.Aim))},
+		{"How people who leave are handled, in line with the estimand", "ICH E9 and E9(R1)", standsAt(hasText(h.st.Estimand, "intercurrent"), "size"), ""},
+		{"Values that come from a pilot, flagged", "Leon, Davis & Kraemer 2011", standsAt(pilot, "data"), notTrial(pilot, "no source names a pilot")},
+		{"Weaknesses of the prior research, and what the plan does about them", "NIH guidance on rigor", standsAt(len(h.p.Threats) > 0, "answer"), ""},
+		{"Formula or simulation with its reference, seed, program and version", "DELTA2 5, PRISMA 13d", standsAt(len(h.p.Methods) > 0 && h.p.Tool.Version != "", "data"), ""},
+		{"Wording ready for a protocol, a results paper and a grant", "DELTA2 8, JARS", standsAt(c != nil, "words"), ""},
 	}
 }
 

@@ -68,7 +68,7 @@ func (w writer) searched() block {
 
 // records is the table of rows: what each yields, from which cells and by which route.
 func (w writer) records() block {
-	t := &tableView{Caption: "Every row of the sheet, and how it became an effect", Head: []string{"row", "study", "effect", "interval", "standard error", "from cells", "route"}, Text: 2, Wide: true}
+	t := &tableView{Caption: "Every row of the sheet, and how it became an effect", Head: []string{"row", "study", "effect", "interval", "standard error", "route, cells and arithmetic"}, Text: 2, Wide: true}
 	for _, s := range w.p.Pool.Studies {
 		effect, interval, se := w.scale.number(s.Estimate), "–", "–"
 		if s.Interval != nil {
@@ -77,9 +77,12 @@ func (w writer) records() block {
 		if s.StandardError != nil {
 			se = fixed(*s.StandardError, 3)
 		}
-		route := s.Route
+		route := words(s.Route)
+		if len(s.From) > 0 {
+			route += ", from " + strings.Join(s.From, ", ")
+		}
 		if s.Formula != "" {
-			route += " (" + s.Formula + ")"
+			route += ": " + s.Formula
 		}
 		if !s.Used {
 			route = "left out: " + s.Why
@@ -90,7 +93,7 @@ func (w writer) records() block {
 		for _, n := range s.Notes {
 			route += "; " + n
 		}
-		t.Rows = append(t.Rows, tableRow{Cells: []string{fmt.Sprint(s.Row), s.Study, effect, interval, se, strings.Join(s.From, ", "), route}})
+		t.Rows = append(t.Rows, tableRow{Cells: []string{fmt.Sprint(s.Row), s.Study, effect, interval, se, route}})
 	}
 	return block{Table: t, Class: "last-words rows", Heading: "The rows"}
 }

@@ -31,7 +31,7 @@ func (w writer) evidence() *section {
 		s.Blocks = append(s.Blocks, b)
 	}
 	if len(pool.Sentences) > 0 {
-		s.Blocks = append(s.Blocks, block{List: pool.Sentences})
+		s.Blocks = append(s.Blocks, block{List: proseList(pool.Sentences)})
 	}
 	s.Blocks = append(s.Blocks, w.heterogeneity())
 	if len(pool.Subgroups) > 1 {
@@ -133,7 +133,13 @@ func words(token string) string {
 	if s, ok := named[token]; ok {
 		return s
 	}
-	return strings.ReplaceAll(token, "-", " ")
+	parts := strings.Split(token, "-")
+	for i, part := range parts {
+		if s, ok := map[string]string{"sd": "SD", "sds": "SDs", "se": "SE", "ses": "SEs", "ci": "CI", "cis": "CIs", "icc": "ICC"}[part]; ok {
+			parts[i] = s
+		}
+	}
+	return strings.Join(parts, " ")
 }
 
 // heterogeneity is the table of how far the studies differ, with the two models.

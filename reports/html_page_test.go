@@ -208,6 +208,7 @@ func testPictures(t *testing.T, b *browser) {
 	b.open(page, 1100)
 	b.picture(filepath.Join(dir, "page-1100.png"))
 	b.pdf(filepath.Join(dir, "page-a4.pdf"), chromedp.PaperA4)
+	b.pdf(filepath.Join(dir, "page-letter.pdf"), chromedp.PaperLetter)
 	b.dark(true)
 	b.open(page, 1100)
 	b.picture(filepath.Join(dir, "page-dark.png"))

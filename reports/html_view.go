@@ -111,3 +111,11 @@ func pair(wide, narrow Figure) (figurePair, string) {
 	}
 	return v, ""
 }
+
+func proseList(ss []string) []string {
+	out := make([]string, len(ss))
+	for i, s := range ss {
+		out[i] = proseText(s)
+	}
+	return out
+}

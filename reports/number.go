@@ -2,6 +2,7 @@ package reports
 
 import (
 	"math"
+	"regexp"
 	"strconv"
 	"strings"
 )
@@ -187,4 +188,19 @@ func plural(n int, one, many string) string {
 		return one
 	}
 	return many
+}
+
+var (
+	proseMinus = regexp.MustCompile(`(^|[\s(\[])-(\.?\d)`)
+	proseLong  = regexp.MustCompile(`(^|[\s(])(\d{5,})\b`)
+)
+
+// proseText sets the numbers of a sentence as the page sets its own: a true minus, thin spaces from five digits on
+// (four may be a year).
+func proseText(s string) string {
+	s = proseMinus.ReplaceAllString(s, "${1}"+minusSign+"${2}")
+	return proseLong.ReplaceAllStringFunc(s, func(m string) string {
+		digits := strings.TrimLeft(m, " \t\n(")
+		return m[:len(m)-len(digits)] + groupDigits(digits)
+	})
 }

@@ -65,6 +65,7 @@ func TestNumbersAtRoundingEdges(t *testing.T) {
 		{chancesText(0.001), "less than 1 chance in 100"},
 		{countWord(11), "Eleven"},
 		{countWord(13), "13"},
+		{proseText("from -0.10 to 0.83 (-.2), 14458 people in 2024, DL-2"), "from −0.10 to 0.83 (−.2), 14\u202f458 people in 2024, DL-2"},
 	}
 	for i, r := range rows {
 		if r.got != r.want {

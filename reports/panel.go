@@ -37,6 +37,7 @@ type panelData struct {
 	Layers    []panelLayer `json:"layers"`
 	Transform string       `json:"transform"` // "", "exp" or "tanh": from the analysed scale to the one people read
 	Start     panelStart   `json:"start"`
+	Plan      panelPlan    `json:"plan"`
 	Groups    int          `json:"groups"`
 	Per       float64      `json:"perParticipant"`
 	Fixed     float64      `json:"fixed"`
@@ -51,6 +52,14 @@ type panelStart struct {
 	Alpha      string  `json:"alpha"`
 	Allocation string  `json:"allocation"`
 	Dropout    float64 `json:"dropout"`
+}
+
+// panelPlan is what the plan itself says, as printed: shown while nothing has been moved.
+type panelPlan struct {
+	Power  string `json:"power"`
+	Needs  string `json:"needs"`
+	Enrols string `json:"enrols"`
+	Costs  string `json:"costs"`
 }
 
 type panelLayer struct {
@@ -96,6 +105,7 @@ func panelOf(p *result.Plan) (*panel, error) {
 	if k := caseOf(p, p.Size.Chosen.Scenario); k != nil {
 		d.Start.Effect = math.Min(math.Max(k.Effect, g.Effects[0]), g.Effects[len(g.Effects)-1])
 	}
+	d.Plan = panelPlan{percentText(p.Size.Chosen.Power), wholeText(firstGroup(&p.Size.Chosen.N)), wholeText(p.Size.Chosen.ToEnrol.Total), costText(p, p.Size.Chosen.Cost)}
 	if c := p.Size.Study.Cost; c != nil {
 		d.Per, d.Fixed, d.AtMost, d.Currency = c.PerParticipant, c.Fixed, c.AtMost, clipRunes(c.Currency, 12)
 		v.HasCost = true

@@ -147,6 +147,13 @@
     } else {
       put("costs", "\u2013");
     }
+    // Where nothing has been moved the plan speaks for itself, to the last digit.
+    if (Object.keys(state).every(function (k) { return state[k] === data.start[k]; })) {
+      put("has", data.plan.power);
+      put("needs", data.plan.needs);
+      put("enrols", data.plan.enrols);
+      put("costs", data.plan.costs);
+    }
     var o = inked(option);
     o.textStyle = { fontFamily: getComputedStyle(root).fontFamily };
     o.xAxis[0].nameTextStyle = { color: css("soft"), align: "right", verticalAlign: "top", padding: [26, 0, 0, 0] };
