@@ -16,7 +16,7 @@ type composite struct {
 // becomes ",", every bracket "(" or ")".
 func parseComposite(text string, mark decimalMark) (composite, bool) {
 	s := strings.ToLower(strings.TrimSpace(plainText(text)))
-	if len(s) > 120 {
+	if len(s) > 120 || strings.Contains(s, "#") {
 		return composite{}, false
 	}
 	if mark == 0 {

@@ -250,7 +250,7 @@ func (g *grid) parseCSV(text string, delimiter rune, lazy bool, opt Options) err
 			if out.cells == nil {
 				out.cells = make([]cell, 0, len(record))
 			}
-			out.cells = append(out.cells, cell{text: field, column: int32(i + 1)})
+			out.cells = append(out.cells, cell{text: unguarded(field), column: int32(i + 1)})
 		}
 		if out.cells == nil {
 			continue

@@ -9,6 +9,7 @@ import (
 	"strconv"
 	"strings"
 	"time"
+	"unicode/utf8"
 
 	"github.com/xuri/excelize/v2"
 )
@@ -217,9 +218,22 @@ func WriteText(w io.Writer, t Table) error {
 	return out.Error()
 }
 
+// formulaStarts are the characters by which a spreadsheet program takes a text for a formula.
+const formulaStarts = "=+-@\t\r\n|＝＋－＠"
+
+// unguarded takes the apostrophe off that guardText put on; spreadsheet programs use it in the same sense.
+func unguarded(s string) string {
+	if len(s) > 1 && s[0] == '\'' {
+		if r, _ := utf8.DecodeRuneInString(s[1:]); strings.ContainsRune(formulaStarts, r) {
+			return s[1:]
+		}
+	}
+	return s
+}
+
 // guardText keeps a spreadsheet program from computing a text (advice of OWASP on CSV injection, recalled from memory).
 func guardText(s string) string {
-	if s == "" || !strings.ContainsRune("=+-@\t\r\n|＝＋－＠", []rune(s)[0]) {
+	if r, _ := utf8.DecodeRuneInString(s); s == "" || !strings.ContainsRune(formulaStarts, r) {
 		return s
 	}
 	if _, fault := parseNumber(s, '.'); fault == numberFine {
