@@ -31,22 +31,7 @@ type mover struct {
 	reads [2][2]*EvidenceRead // [options][sheet]
 }
 
-// Decompose takes apart what moved the number to enrol from edition e to the plan as it is.
-func Decompose(f *File, from int) (*result.Move, error) {
-	all, err := edition.Beside(f.Path).Read()
-	if err != nil {
-		return nil, err
-	}
-	e := edition.Latest(all)
-	if from > 0 && from <= len(all) {
-		e = all[from-1]
-	}
-	if e == nil {
-		return &result.Move{Parts: []result.MovePart{}, Orders: []result.MoveOrder{}, Why: "there is no edition to compare with"}, nil
-	}
-	return decompose(f, e), nil
-}
-
+// decompose takes apart what moved the number to enrol from edition e to plan f.
 func decompose(f *File, e *edition.Edition) *result.Move {
 	out := &result.Move{Parts: []result.MovePart{}, Orders: []result.MoveOrder{}}
 	m, err := newMover(f, e)
@@ -146,7 +131,7 @@ func (m *mover) size(set int) (int, string) {
 		o = 1
 	}
 	f := *m.files[o]
-	s := &stages{file: &f}
+	s := &stages{file: &f, lean: true}
 	if m.reads[o][0] != nil {
 		s.ev = hybrid(m.reads[o][0], m.reads[o][1], set&partStudies != 0, set&partRows != 0)
 	}

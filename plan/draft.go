@@ -30,7 +30,7 @@ func DraftFor(sheet, name string) (path string, text []byte, err error) {
 	if ev.Sheet.Name != "" {
 		line("  sheet: %s", quoteYAML(ev.Sheet.Name))
 	}
-	line("  higher is better: %t   # assumed: %s", true, "say false when a smaller value is the better one")
+	line("  higher is better: %t   # assumed from the side on which the average of the studies lies", draftHigher(sheet, name))
 	line("")
 	line("pool:")
 	line("  scale: %s   # assumed from what the rows report", ev.Scale)
@@ -58,6 +58,12 @@ func DraftFor(sheet, name string) (path string, text []byte, err error) {
 	line("  power: %s   # assumed", strconv.FormatFloat(defaultPower, 'f', 2, 64))
 	line("  size for: %s   # assumed", defaultSizeFor)
 	return path, []byte(b.String()), nil
+}
+
+// draftHigher guesses that the studies' average lies on the better side: a study is planned to show what they showed.
+func draftHigher(sheet, name string) bool {
+	p, err := Pooled(&File{Evidence: Evidence{File: sheet, Sheet: name}})
+	return err != nil || p.Random.Estimate == nil || *p.Random.Estimate >= p.Scale.NoEffect
 }
 
 // draftNuisance takes from the sheet what the outcome needs besides the effect.

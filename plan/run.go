@@ -14,7 +14,7 @@ import (
 // why the input can't be used; everything less than that is a finding of the result. The same plan and the same sheet
 // give the same result, byte for byte.
 func Run(f *File) (*result.Plan, error) {
-	s, err := run(f)
+	s, err := run(f, false)
 	if err != nil {
 		return nil, err
 	}
@@ -29,11 +29,12 @@ type stages struct {
 	built *BuiltRange
 	info  result.ScaleInfo
 	out   *result.Plan
+	lean  bool // only the size, nothing that a report alone shows
 }
 
-func run(given *File) (*stages, error) {
+func run(given *File, lean bool) (*stages, error) {
 	f, assumptions := given.WithDefaults()
-	s := &stages{file: f}
+	s := &stages{file: f, lean: lean}
 	if f.Evidence.File != "" {
 		ev, err := ReadEvidence(f)
 		if err != nil {
@@ -63,11 +64,11 @@ func (s *stages) compute(given *File, assumptions []result.Assumption) (*stages,
 	if s.built, err = BuildRange(f, s.ev, s.pool); err != nil {
 		return nil, err
 	}
-	var nuisance map[string]Assumed
-	if s.ev != nil {
-		nuisance = s.ev.Nuisance
+	sizing := SizeStudy
+	if s.lean {
+		sizing = sizeOnly
 	}
-	size, err := SizeStudy(f, s.info, s.built, nuisance)
+	size, err := sizing(f, s.info, s.built, s.nuisance())
 	if err != nil {
 		return nil, err
 	}

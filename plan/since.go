@@ -22,7 +22,7 @@ func (f *File) EvidencePath() string {
 
 // RunSince runs a plan and compares the result with the plan's last edition, where there is one.
 func RunSince(f *File) (*result.Plan, error) {
-	s, err := run(f)
+	s, err := run(f, false)
 	if err != nil {
 		return nil, err
 	}
@@ -54,7 +54,7 @@ func (s *stages) edition(f *File) (*edition.Edition, error) {
 
 // Freeze runs a plan and keeps the run as its next edition.
 func Freeze(f *File, date, by, why string, again bool) (*edition.Edition, error) {
-	s, err := run(f)
+	s, err := run(f, false)
 	if err != nil {
 		return nil, err
 	}
@@ -91,8 +91,9 @@ func (f *File) rules() edition.Rules {
 	return out
 }
 
-// Compare compares edition from with edition to of a plan. from 0 is the last edition, to 0 a run now.
-func Compare(f *File, from, to int) (*result.Comparison, error) {
+// Compare compares edition from with edition to of a plan. from 0 is the last edition, to 0 a run now. With apart, what
+// moved the number to enrol is taken apart as well.
+func Compare(f *File, from, to int, apart bool) (*result.Comparison, error) {
 	all, err := edition.Beside(f.Path).Read()
 	if err != nil {
 		return nil, err
@@ -115,7 +116,7 @@ func Compare(f *File, from, to int) (*result.Comparison, error) {
 		}
 	}
 	if to == 0 {
-		s, err := run(f)
+		s, err := run(f, true)
 		if err != nil {
 			return nil, err
 		}
@@ -123,7 +124,7 @@ func Compare(f *File, from, to int) (*result.Comparison, error) {
 		if err != nil {
 			return nil, err
 		}
-		return edition.Compare(a, now, f.rules(), s.frozen(a), all), nil
+		return compared(f, s, a, now, all, apart), nil
 	}
 	b, err := pick(to)
 	if err != nil {
@@ -133,7 +134,17 @@ func Compare(f *File, from, to int) (*result.Comparison, error) {
 	if err != nil {
 		return nil, err
 	}
-	return edition.Compare(a, b, g.rules(), s.frozen(a), all), nil
+	return compared(g, s, a, b, all, apart), nil
+}
+
+// compared compares an edition with a run of plan f.
+func compared(f *File, s *stages, a, b *edition.Edition, all []*edition.Edition, apart bool) *result.Comparison {
+	c := edition.Compare(a, b, f.rules(), s.frozen(a), all)
+	x, y := a.Result.Size.Chosen, b.Result.Size.Chosen
+	if apart && x != nil && y != nil && x.ToEnrol.Total != y.ToEnrol.Total {
+		c.Move = decompose(f, a)
+	}
+	return c
 }
 
 // rerun runs an edition again from its own plan and its own copy of the evidence.
@@ -149,6 +160,6 @@ func rerun(f *File, e *edition.Edition) (*stages, *File, error) {
 		}
 		g.Evidence.File = path
 	}
-	s, err := run(g)
+	s, err := run(g, true)
 	return s, g, err
 }

@@ -40,6 +40,7 @@ type sizer struct {
 	sign   float64 // +1 where a larger effect favours the treatment
 	// unit divides an effect of the analysed scale into one of the design: the SD for a difference in natural units, else 1.
 	unit float64
+	lean bool // only the size and its assurance, nothing that is drawn
 }
 
 // settings are the numbers of the planned study that a sensitivity run may exchange.

@@ -49,7 +49,9 @@ func (s *sizer) assurance() {
 		out.AtChosen, out.AtChosenAdj = number(v.Assurance), v.Adjusted
 		out.ExpectedPower = fmt.Sprintf("averaged over what the next setting may hold, the chance of success is %s and can't exceed %s", percentWhole(v.Assurance), percentWhole(*out.Ceiling))
 	}
-	out.Curve = s.averages(a, s.sizes(28), unadjusted, adjusted)
+	if !s.lean {
+		out.Curve = s.averages(a, s.sizes(28), unadjusted, adjusted)
+	}
 }
 
 func percentWhole(p float64) string { return fmt.Sprintf("%.0f%%", 100*p) }

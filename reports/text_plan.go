@@ -86,7 +86,7 @@ func (w *textWriter) assurance(a *result.Assurance) {
 	}
 	s := "Assurance " + percentText(*a.AtChosen)
 	if a.Ceiling != nil {
-		s += ", at most " + percentText(*a.Ceiling)
+		s += ", at most " + fixed(100**a.Ceiling, 0) + "%"
 	}
 	if a.AtChosenAdj != nil {
 		s += "; " + percentText(*a.AtChosenAdj) + " allowing for missing studies"

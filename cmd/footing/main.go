@@ -1,4 +1,8 @@
 // Command footing sizes a study from a spreadsheet of earlier ones.
 package main
 
-func main() {}
+import "os"
+
+func main() {
+	os.Exit(run(os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
+}
