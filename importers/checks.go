@@ -12,11 +12,28 @@ import (
 
 // checkRows looks across the records.
 func (s *Sheet) checkRows() {
-	s.checkDuplicates()
-	s.checkControls()
+	labels := labelNumbers(s.Records)
+	s.checkDuplicates(labels)
+	s.checkControls(labels)
 	for _, arm := range []string{"treatment", "control"} {
 		s.checkSDs(arm)
 	}
+}
+
+// labelNumbers gives records with the same label the same number.
+func labelNumbers(recs []Record) []int32 {
+	out := make([]int32, len(recs))
+	seen := make(map[string]int32, len(recs))
+	for i := range recs {
+		k := foldHeading(recs[i].Study)
+		n, ok := seen[k]
+		if !ok {
+			n = int32(len(seen))
+			seen[k] = n
+		}
+		out[i] = n
+	}
+	return out
 }
 
 // add adds a finding about a whole row.
@@ -75,14 +92,12 @@ func sameFiguresTyped(a, b *Record) bool {
 }
 
 // checkDuplicates reports rows that say the same in every figure, and labels that stand before several rows.
-func (s *Sheet) checkDuplicates() {
+func (s *Sheet) checkDuplicates(labels []int32) {
 	figures := make(map[uint64]int, len(s.Records))
-	labels := make(map[string]int, len(s.Records)) // rows of each label
-	folded := make([]string, len(s.Records))
+	rows := make([]int32, len(s.Records)) // of each label
 	for i := range s.Records {
 		r := &s.Records[i]
-		folded[i] = foldHeading(r.Study)
-		labels[folded[i]]++
+		rows[labels[i]]++
 		key, n := figuresHash(r)
 		if n < 2 {
 			continue
@@ -94,15 +109,14 @@ func (s *Sheet) checkDuplicates() {
 		}
 		figures[key] = i
 	}
-	told := map[string]bool{}
 	for i := range s.Records {
-		if labels[folded[i]] < 2 || told[folded[i]] {
+		if rows[labels[i]] < 2 {
 			continue
 		}
-		told[folded[i]] = true
+		rows[labels[i]] = 0 // told once
 		var at []int
-		for j := i; j < len(folded) && len(at) < 12; j++ {
-			if folded[j] == folded[i] {
+		for j := i; j < len(labels) && len(at) < 12; j++ {
+			if labels[j] == labels[i] {
 				at = append(at, j)
 			}
 		}
@@ -125,9 +139,9 @@ func (s *Sheet) rowList(at []int) string {
 
 // checkControls reports rows of one study whose control groups have the same figures but whose treatment groups differ:
 // the same people would be counted twice.
-func (s *Sheet) checkControls() {
+func (s *Sheet) checkControls(labels []int32) {
 	type group struct {
-		label string
+		label int32
 		arm   [6]float64
 	}
 	var controls [6]uint8
@@ -137,7 +151,7 @@ func (s *Sheet) checkControls() {
 	seen := map[group]int{}
 	for i := range s.Records {
 		r := &s.Records[i]
-		g := group{label: foldHeading(r.Study)}
+		g := group{label: labels[i]}
 		n := 0
 		for k, p := range controls {
 			if f := r.figure(p); f.Given {

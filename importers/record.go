@@ -156,21 +156,23 @@ func (r *Record) textAt(column int) string {
 // tellApart puts the year behind labels that stand before several studies of different years, as when one column holds
 // the authors and another the years.
 func tellApart(recs []Record) {
-	years := make(map[string]int, len(recs))
-	differ := map[string]bool{}
-	for i := range recs {
-		k := foldHeading(recs[i].Study)
-		if y, seen := years[k]; seen && y != recs[i].Year && y != 0 && recs[i].Year != 0 {
+	labels := labelNumbers(recs)
+	years := make([]int, len(recs))
+	differ := map[int32]bool{}
+	for i, k := range labels {
+		switch y := recs[i].Year; {
+		case y == 0 || years[k] == y:
+		case years[k] == 0:
+			years[k] = y
+		default:
 			differ[k] = true
-		} else if !seen {
-			years[k] = recs[i].Year
 		}
 	}
 	if len(differ) == 0 {
 		return
 	}
 	for i := range recs {
-		if r := &recs[i]; r.Year != 0 && differ[foldHeading(r.Study)] {
+		if r := &recs[i]; r.Year != 0 && differ[labels[i]] {
 			r.Study += " " + strconv.Itoa(r.Year)
 		}
 	}
