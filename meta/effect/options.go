@@ -24,6 +24,16 @@ type Options struct {
 	CILevel float64
 	// SMDVariance is the variance of a standardized mean difference; "" means VarianceAtG.
 	SMDVariance SMDVariance
+	// ApproximateJ takes the printed approximation 1 - 3/(4 df - 1) of the small-sample factor, which worked examples use. False: the exact factor.
+	ApproximateJ bool
+}
+
+// smallSample is the small-sample factor as these options have it.
+func (o Options) smallSample(df float64) float64 {
+	if o.ApproximateJ {
+		return 1 - 3/(4*df-1)
+	}
+	return SmallSampleFactor(df)
 }
 
 func (o Options) withDefaults() Options {

@@ -37,8 +37,8 @@ func fromMeans(w *work) {
 		}
 		s := PooledSD(s1, n1, s2, n2)
 		d := (m1 - m2) / s
-		g, v := hedgesG(d, n1, n2, w.opt.SMDVariance)
-		w.give(g, v, fmt.Sprintf("(%s - %s)/%s = %s, times J(%s) = %s", plain(m1), plain(m2), plain(s), plain(d), plain(n1+n2-2), plain(SmallSampleFactor(n1+n2-2))))
+		g, v := w.opt.hedgesG(d, n1, n2)
+		w.give(g, v, fmt.Sprintf("(%s - %s)/%s = %s, times J(%s) = %s", plain(m1), plain(m2), plain(s), plain(d), plain(n1+n2-2), plain(w.opt.smallSample(n1+n2-2))))
 		if ratio := math.Max(s1/s2, s2/s1); ratio > 1.5 && n1 != n2 {
 			w.note("the SDs differ by a factor of %.2f and the groups in size: the variance by the pooled SD may be off by up to twice", ratio)
 		}

@@ -59,8 +59,8 @@ func fromT(w *work) {
 		w.say(finding.Warning, df, "df-and-people-disagree", fmt.Sprintf("%s degrees of freedom and %s people do not go together (two groups would have %s)", df.text(), plain(n1+n2), plain(n1+n2-2)), "check both cells; the people are used until then")
 	}
 	d := t * math.Sqrt(1/n1+1/n2)
-	g, v := hedgesG(d, n1, n2, w.opt.SMDVariance)
-	w.give(g, v, fmt.Sprintf("%s sqrt(1/%s + 1/%s) = %s, times J(%s) = %s", plain(t), plain(n1), plain(n2), plain(d), plain(n1+n2-2), plain(SmallSampleFactor(n1+n2-2))))
+	g, v := w.opt.hedgesG(d, n1, n2)
+	w.give(g, v, fmt.Sprintf("%s sqrt(1/%s + 1/%s) = %s, times J(%s) = %s", plain(t), plain(n1), plain(n2), plain(d), plain(n1+n2-2), plain(w.opt.smallSample(n1+n2-2))))
 }
 
 // exactP reads an exact p value.
@@ -102,8 +102,8 @@ func fromP(w *work) {
 	df := n1 + n2 - 2
 	t := s * num.StudentTQuantileUpper(p/float64(sides), df)
 	d := t * math.Sqrt(1/n1+1/n2)
-	g, v := hedgesG(d, n1, n2, w.opt.SMDVariance)
-	w.give(g, v, fmt.Sprintf("p %s, %d-sided: t(%s) = %s; %s sqrt(1/%s + 1/%s), times J = %s", w.r.P.text(), sides, plain(df), plain(t), plain(t), plain(n1), plain(n2), plain(SmallSampleFactor(df))))
+	g, v := w.opt.hedgesG(d, n1, n2)
+	w.give(g, v, fmt.Sprintf("p %s, %d-sided: t(%s) = %s; %s sqrt(1/%s + 1/%s), times J = %s", w.r.P.text(), sides, plain(df), plain(t), plain(t), plain(n1), plain(n2), plain(w.opt.smallSample(df))))
 }
 
 // fromEstimateP: standard error = |estimate| over the quantile that p stands for: Student's t for a mean difference with known group sizes, else the normal's.

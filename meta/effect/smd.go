@@ -16,12 +16,12 @@ func SmallSampleFactor(df float64) float64 {
 }
 
 // hedgesG turns Cohen's d into Hedges' g with its variance.
-func hedgesG(d, n1, n2 float64, form SMDVariance) (g, variance float64) {
+func (o Options) hedgesG(d, n1, n2 float64) (g, variance float64) {
 	df := n1 + n2 - 2
-	j := SmallSampleFactor(df)
+	j := o.smallSample(df)
 	g = j * d
 	spread := (n1 + n2) / (n1 * n2)
-	switch form {
+	switch o.SMDVariance {
 	case VarianceJSquared:
 		variance = j * j * (spread + d*d/(2*(n1+n2)))
 	case VarianceUnbiased:

@@ -1,2 +1,3 @@
-// Package qualify: see doc.
+// Package qualify recomputes published values on this machine, through the same packages that a plan runs through, and puts value beside value: an
+// installation qualification for regulated work.
 package qualify
