@@ -8,9 +8,6 @@ import (
 // mostCells is the number of cells of the sheet that the page shows; a larger sheet is left to the workbook.
 const mostCells = 6000
 
-// words writes the wording for the protocol, where there is one.
-func (w writer) words() *section { return nil }
-
 // data writes where everything came from: rows, headings, findings, assumptions, methods.
 func (w writer) data() *section {
 	s := &section{ID: "data", Title: "Data and methods", Lead: w.dataLead()}
@@ -95,7 +92,7 @@ func (w writer) records() block {
 		}
 		t.Rows = append(t.Rows, tableRow{Cells: []string{fmt.Sprint(s.Row), s.Study, effect, interval, se, route}})
 	}
-	return block{Table: t, Class: "last-words rows", Heading: "The rows"}
+	return block{Table: t, Class: "last-words rows"}
 }
 
 // cells is every cell as typed, under its address.
@@ -172,7 +169,7 @@ func (w writer) findings() block {
 	if len(t.Rows) == 0 {
 		return block{Paragraphs: []string{"Findings: none."}}
 	}
-	return block{Table: t, Heading: "Findings"}
+	return block{Table: t}
 }
 
 func (w writer) assumptions() block {
@@ -198,7 +195,7 @@ func (w writer) assumptions() block {
 	if len(t.Rows) == 0 {
 		return block{}
 	}
-	return block{Table: t, Heading: "Assumptions"}
+	return block{Table: t}
 }
 
 func (w writer) methods() block {
@@ -213,7 +210,7 @@ func (w writer) methods() block {
 	if len(t.Rows) == 0 {
 		return block{}
 	}
-	return block{Table: t, Heading: "Methods"}
+	return block{Table: t}
 }
 
 // origin says what to run to have all of it again.
