@@ -41,7 +41,11 @@ func (r *recordReader) readFigure(rec *Record, c *cell, k int, at string) {
 		return
 	}
 	if strings.Contains(string(col.Meaning), " + ") {
-		if !isMissing(c.text) && !r.several(rec, c, col, at) {
+		switch {
+		case isMissing(c.text):
+		case isNotSignificant(c.text):
+			r.rep.NotSignificant = true
+		case !r.several(rec, c, col, at):
 			r.sayFault(rec, c, col, at, numberNot)
 		}
 		return
@@ -133,7 +137,7 @@ func (r *recordReader) number(c *cell, m Meaning) (number, numberFault) {
 	return n, fault
 }
 
-var takesNotSignificant = map[Meaning]bool{P: true, "t": true, "f": true, "z": true, "chi-square": true, "r": true, Estimate: true}
+var takesNotSignificant = map[Meaning]bool{P: true, "t": true, "f": true, "z": true, "chi-square": true, "r": true, Estimate: true, CILower: true, CIUpper: true, "mean difference": true, "coefficient": true}
 
 func isNotSignificant(s string) bool {
 	switch strings.ToLower(strings.Trim(plainText(s), " ()*")) {
@@ -158,6 +162,10 @@ func (r *recordReader) sayFault(rec *Record, c *cell, col *column, at string, fa
 		}
 		fallthrough
 	default:
+		if strings.Contains(string(col.Meaning), " + ") {
+			r.tell(finding.Error, "text-in-number-cell", rec, at, c.text, fmt.Sprintf("%q can't be read as %s; the cell is not used", t, strings.ReplaceAll(string(col.Meaning), " + ", ", ")), "type the figures as the other rows do, or leave the cell empty if they are not reported")
+			return
+		}
 		r.tell(finding.Error, "text-in-number-cell", rec, at, c.text, fmt.Sprintf("%q stands where a number (%s) should; the cell is not used", t, col.Meaning), "type the number alone, or leave the cell empty if it is not reported")
 	}
 }

@@ -17,6 +17,30 @@ func (s *Sheet) checkRows() {
 	s.checkControls(labels)
 	for _, arm := range []string{"treatment", "control"} {
 		s.checkSDs(arm)
+		s.checkGranularity(arm)
+	}
+}
+
+// checkGranularity reports means that no whole-number answers of n people can give (Brown & Heathers 2017): the mean of n
+// people over some items is a multiple of 1/(n items). It looks only at rows that state the number of items, since other
+// outcomes need not be whole.
+func (s *Sheet) checkGranularity(arm string) {
+	meanAt, nAt, itemsAt := placeNumber[Meaning(arm+" mean")], placeNumber[Meaning(arm+" n")], placeNumber["items"]
+	for i := range s.Records {
+		r := &s.Records[i]
+		mean, n, items := r.figure(meanAt), r.figure(nAt), r.figure(itemsAt)
+		if !mean.Given || !n.Given || !items.Given || mean.Decimals < 1 || n.Value < 1 || items.Value < 1 || n.Value*items.Value >= math.Pow(10, float64(mean.Decimals)) {
+			continue
+		}
+		parts := n.Value * items.Value
+		half := 0.5000001 * math.Pow(10, -float64(mean.Decimals)) // rounding either way at a tie
+		below, above := math.Floor(mean.Value*parts)/parts, math.Ceil(mean.Value*parts)/parts
+		if mean.Value-below <= half || above-mean.Value <= half {
+			continue
+		}
+		s.addAt(finding.Warning, "mean-impossible-for-n", r, mean.Cell, textOf(r, mean.Cell),
+			fmt.Sprintf("whole-number answers of %s people to %s items can't have the mean %s: the nearest are %.*f and %.*f", brief(n.Value), brief(items.Value), textOf(r, mean.Cell), mean.Decimals, below, mean.Decimals, above),
+			"check the mean and n in the paper (n may be smaller for this outcome)")
 	}
 }
 

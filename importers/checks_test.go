@@ -50,3 +50,21 @@ func TestPercentages(t *testing.T) {
 		t.Error(kindsOf(s.Findings))
 	}
 }
+
+// A mean of 5.19 among 28 people is impossible (Brown & Heathers 2017, recalled from memory; 145/28 = 5.179 and
+// 146/28 = 5.214); 5.18 and 5.21 are possible, and over 4 items 5.19 is too (581/112 = 5.1875).
+func TestGranularity(t *testing.T) {
+	s := readCSVText(t, "study,n1,mean1,sd1,n2,mean2,sd2,items\nA,28,5.19,1,28,5.18,1,1\nB,28,5.21,1,28,5.19,1,4\nC,28,5.2,1,120,5.19,1,1\nD,28,5.19,1,28,5.19,1,\n", Options{})
+	var got []string
+	for _, f := range s.Findings {
+		if f.Kind == "mean-impossible-for-n" {
+			got = append(got, f.Place.Cell)
+			if !strings.Contains(f.What, "5.18 and 5.21") || f.Text != "5.19" {
+				t.Error(f)
+			}
+		}
+	}
+	if strings.Join(got, " ") != "C2" {
+		t.Errorf("%q", got)
+	}
+}

@@ -62,6 +62,7 @@ var kinds = map[string]string{
 	"duplicate-row":           "two rows have the same figures",
 	"several-rows-one-study":  "one label stands before several rows",
 	"same-control-group":      "two rows of a study have the same control group",
+	"mean-impossible-for-n":   "whole-number answers of that many people can't have this mean",
 	"sd-looks-like-se":        "an SD is so small that it is probably a standard error",
 
 	// Cells.
