@@ -1,6 +1,7 @@
 package plan
 
 import (
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -28,7 +29,7 @@ func RunSince(f *File) (*result.Plan, error) {
 	}
 	all, err := edition.Beside(f.Path).Read()
 	if err != nil {
-		return nil, err
+		return s.withBrokenEditions(err)
 	}
 	if last := edition.Latest(all); last != nil {
 		now, err := s.edition(f)
@@ -38,6 +39,20 @@ func RunSince(f *File) (*result.Plan, error) {
 		s.out.Edition = last.Number + 1
 		s.out.Since = edition.Compare(last, now, f.rules(), s.frozen(last), all)
 	}
+	return s.out, nil
+}
+
+// withBrokenEditions gives the run without a comparison and says in its findings what is wrong with the editions.
+func (s *stages) withBrokenEditions(err error) (*result.Plan, error) {
+	var ps finding.Problems
+	if !errors.As(err, &ps) {
+		return nil, err
+	}
+	for i := range ps {
+		ps[i].Place.File = filepath.Join(filepath.Base(filepath.Dir(ps[i].Place.File)), filepath.Base(ps[i].Place.File))
+	}
+	s.out.Findings = mergeFindings(s.out.Findings, ps)
+	s.out.Undecided = undecided(s.out.Findings)
 	return s.out, nil
 }
 

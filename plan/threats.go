@@ -81,7 +81,7 @@ func (t *threatFinder) budget() {
 	}
 	text := "the size asked for costs more than the budget allows"
 	if c.AffordableToEnrol != nil {
-		text += fmt.Sprintf("; it pays for %d people", *c.AffordableToEnrol)
+		text += fmt.Sprintf("; it pays for %s people", grouped(*c.AffordableToEnrol))
 	}
 	t.add(9, "The budget does not reach.", "As planned %s.", text)
 }
@@ -109,7 +109,7 @@ func (t *threatFinder) sensitivity() {
 		return
 	}
 	s := t.p.Size.Sensitivity[best]
-	text := fmt.Sprintf("%d people have to be enrolled", s.ToEnrol.Total)
+	text := fmt.Sprintf("%s people have to be enrolled", grouped(s.ToEnrol.Total))
 	if s.OverBudget && !c.OverBudget {
 		text += ", over the budget"
 	}
@@ -227,4 +227,13 @@ func (t *threatFinder) assumedNuisance() {
 	if pilot > 0 {
 		t.add(2.8, "A value comes from a small pilot:", "its own uncertainty is large; see the findings.")
 	}
+}
+
+// grouped writes a count with thin spaces in the thousands.
+func grouped(n int) string {
+	s := strconv.Itoa(n)
+	for i := len(s) - 3; i > 0; i -= 3 {
+		s = s[:i] + "\u202f" + s[i:]
+	}
+	return s
 }

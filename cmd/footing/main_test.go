@@ -27,7 +27,7 @@ type removing struct{ m *testing.M }
 func (r removing) Run() int {
 	defer func() {
 		if folderMade {
-			os.RemoveAll(filepath.Dir(preparedFolder()))
+			os.RemoveAll(preparedFolder())
 		}
 	}()
 	return r.m.Run()
@@ -129,10 +129,10 @@ func exampleFolder(t *testing.T) string {
 	if err := os.CopyFS(dir, os.DirFS(preparedFolder())); err != nil {
 		t.Fatal(err)
 	}
-	return dir
+	return filepath.Join(dir, "continuous")
 }
 
-// preparedFolder is made once.
+// preparedFolder is made once: both demonstrations, the continuous one with an edition and a change since.
 var preparedFolder = sync.OnceValue(func() string {
 	dir, err := os.MkdirTemp("", "footing-examples")
 	must(err)
@@ -140,13 +140,14 @@ var preparedFolder = sync.OnceValue(func() string {
 	if _, errOut, code := execute(dir, []string{"demo", "."}); code != exitDone {
 		panic("demo: " + errOut)
 	}
+	root := dir
 	dir = filepath.Join(dir, "continuous")
 	if _, errOut, code := execute(dir, []string{"freeze", "plan.yaml", "--date", "2026-01-01"}); code != exitDone {
 		panic("freeze: " + errOut)
 	}
 	must(os.WriteFile(filepath.Join(dir, "plan.yaml"), bytes.Replace(continuousPlan, []byte("power: 0.80"), []byte("power: 0.85"), 1), 0o600))
 	must(os.WriteFile(filepath.Join(dir, "new.csv"), []byte("study,year,treatment n,treatment mean,treatment SD,control n,control mean,control SD\nSaw mill (invented),2026,40,55.1,11.9,41,51.0,12.2\n"), 0o600))
-	return dir
+	return root
 })
 
 func must(err error) {

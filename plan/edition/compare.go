@@ -209,7 +209,11 @@ func line(c *result.Comparison, a, b *result.Plan) string {
 			from, to = f.FromShown, f.ToShown
 		}
 		if f.Name == "pooled" && from != nil && to != nil {
-			out += fmt.Sprintf("; average %.2f to %.2f", *from, *to)
+			if x, y := fmt.Sprintf("%.2f", *from), fmt.Sprintf("%.2f", *to); x != y {
+				out += "; average " + x + " to " + y
+			} else {
+				out += "; average " + x + " as before"
+			}
 		}
 	}
 	x, y := a.Size.Chosen, b.Size.Chosen
