@@ -62,7 +62,8 @@ type forest struct {
 	dense   bool
 	rowH    float64
 	columns forestColumns
-	heavy   float64 // largest weight
+	heavy   float64        // largest weight
+	groups  map[string]int // place of each subgroup in the result; nil without subgroups
 }
 
 type forestColumns struct {
@@ -90,6 +91,7 @@ func newForest(p *result.Plan, o figureOptions) *forest {
 	}
 	byYear(f.rows)
 	f.dense = len(f.rows) > forestDense
+	f.bySubgroup()
 	f.rowH = 22
 	if len(f.rows) > 24 {
 		f.rowH = 17
@@ -100,6 +102,24 @@ func newForest(p *result.Plan, o figureOptions) *forest {
 	f.columns = f.layout()
 	f.x = f.domain()
 	return f
+}
+
+// bySubgroup gathers the rows of each subgroup, in the order of the result, where the plan asks for subgroups.
+func (f *forest) bySubgroup() {
+	if len(f.pool.Subgroups) < 2 || f.dense {
+		return
+	}
+	f.groups = map[string]int{}
+	for i, g := range f.pool.Subgroups {
+		f.groups[g.Name] = i
+	}
+	place := func(s result.Study) int {
+		if i, ok := f.groups[s.Subgroup]; ok {
+			return i
+		}
+		return len(f.groups)
+	}
+	sort.SliceStable(f.rows, func(i, j int) bool { return place(f.rows[i]) < place(f.rows[j]) })
 }
 
 // byYear orders studies by year, those without one last, and by sheet row within a year.
@@ -205,11 +225,17 @@ func (f *forest) figure(rows []result.Study, legend bool) Figure {
 	top := y + 14
 	pooledY := top + 34
 	firstRow := pooledY + 40
-	bottom := firstRow + f.rowH*float64(len(rows)) - f.rowH/2 + 4
+	heads := f.headings(rows)
+	bottom := firstRow + f.rowH*float64(len(rows)) + f.headH()*float64(len(heads)) - f.rowH/2 + 4
 	f.backdrop(s, top, pooledY, bottom)
 	f.pooledRow(s, top, pooledY)
+	down := 0.0
 	for i, r := range rows {
-		cy := firstRow + f.rowH*float64(i)
+		if heads[i] {
+			f.groupRow(s, r.Subgroup, firstRow+f.rowH*float64(i)+down+3)
+			down += f.headH()
+		}
+		cy := firstRow + f.rowH*float64(i) + down
 		if f.dense {
 			f.denseRow(s, r, cy, i == 0 || !sameYear(rows[i-1], r))
 		} else {

@@ -124,6 +124,47 @@ func (f *forest) bracket(s *scene, lo, hi, y float64) {
 	s.add(rect(x-3, y+3, w+6, 13, inkPaper), label(x, y+13, text, inkEvidence, 10.5))
 }
 
+// headings are the rows before which a subgroup's own row stands.
+func (f *forest) headings(rows []result.Study) map[int]bool {
+	out := map[int]bool{}
+	for i, r := range rows {
+		if f.groups != nil && (i == 0 || rows[i-1].Subgroup != r.Subgroup) {
+			out[i] = true
+		}
+	}
+	return out
+}
+
+// headH is the height of a subgroup's own row.
+func (f *forest) headH() float64 { return f.rowH + 6 }
+
+// groupRow is a subgroup's own row: its name, its mean and the interval as a thicker line.
+func (f *forest) groupRow(s *scene, name string, y float64) {
+	c := f.columns
+	text := name
+	if text == "" {
+		text = "group not said"
+	}
+	s.add(line(0, y-f.rowH/2-1, c.label, y-f.rowH/2-1, inkLine, 1))
+	i, ok := f.groups[name]
+	if !ok {
+		s.add(clipped(0, y+4, text, c.label, inkSoft, 12, true))
+		return
+	}
+	g := f.pool.Subgroups[i]
+	s.add(clipped(0, y+4, text, c.plotA-10, inkSoft, 12, true))
+	if g.Random.Estimate == nil || g.Random.Interval == nil {
+		return
+	}
+	s.add(line(f.x.cut(g.Random.Interval.Lower), y, f.x.cut(g.Random.Interval.Upper), y, inkEvidence, 2.6).faded(0.75), circle(f.x.cut(*g.Random.Estimate), y, 3.6, inkPaper).outline(inkEvidence, 2))
+	if c.effect > 0 {
+		s.add(label(c.effect, y+4, f.scale.text(*g.Random.Estimate), inkSoft, 12).bold().end())
+	}
+	if c.hasInterval {
+		s.add(label(c.interval, y+4, f.scale.interval(g.Random.Interval.Lower, g.Random.Interval.Upper), inkSoft, 11).bold().end())
+	}
+}
+
 func (f *forest) row(s *scene, r result.Study, y float64) {
 	c := f.columns
 	s.add(clipped(0, y+4, r.Study, c.label, inkText, 12, false))

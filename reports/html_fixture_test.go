@@ -208,6 +208,9 @@ func (f *fixture) groups(pool *result.Pool, studies []result.Study, t float64) {
 		return
 	}
 	half := f.k / 2
+	for i := range studies {
+		studies[i].Subgroup = map[bool]string{true: "schools", false: "adult classes"}[i < half]
+	}
 	pool.Subgroups = []result.Subgroup{{Name: "schools", K: half, Random: part(studies[:half]), ISquared: num(0.2), TauSquared: num(0.01)}, {Name: "adult classes", K: f.k - half, Random: part(studies[half:]), ISquared: num(0.4), TauSquared: num(0.03)}}
 	pool.Between = &result.Between{Q: num(1.9), DF: 1, P: num(0.168), Weak: "few studies in each group"}
 	sorted := slices.Clone(studies)
