@@ -336,16 +336,10 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 			unclear("direction that is known here", `use "favours treatment" or "favours control"`)
 		}
 	case Better:
-		switch folded {
-		case "yes", "y", "true", "1", "higher", "+":
-			rec.HigherBetter = new(bool)
-			*rec.HigherBetter = true
-		case "no", "n", "false", "0", "lower", "-1":
-			rec.HigherBetter = new(bool)
-		default:
-			if !isMissing(folded) {
-				unclear("answer to whether higher is better", "use yes or no")
-			}
+		if yes, ok := answers[folded]; ok {
+			rec.HigherBetter = &yes
+		} else if !isMissing(folded) {
+			unclear("answer to whether higher is better", "use yes or no")
 		}
 	case SidesOfP:
 		switch strings.NewReplacer("-", " ", "sided", "", "tailed", "", "tail", "").Replace(folded) {
@@ -370,6 +364,8 @@ func (r *recordReader) word(rec *Record, c *cell, col *column, at string) {
 		}
 	}
 }
+
+var answers = map[string]bool{"yes": true, "y": true, "true": true, "1": true, "higher": true, "+": true, "no": false, "n": false, "false": false, "0": false, "lower": false, "-1": false}
 
 var risks = map[string]string{"low": "low", "l": "low", "green": "low", "+": "low", "some concerns": "some concerns", "some": "some concerns",
 	"moderate": "some concerns", "medium": "some concerns", "unclear": "some concerns", "yellow": "some concerns", "s": "some concerns",

@@ -30,6 +30,9 @@ func (s *columnSet) sayHeadings(g *grid) {
 		g.note(finding.Note, "d-as-printed", c.Cell, fmt.Sprintf("the values under %q are used as printed; if they carry no small-sample correction they are too large by the factor 1 + 3/(4 df - 1) or so", shorten(c.Typed)),
 			"give means and SDs, or Hedges' g, for small studies")
 	}
+	if s.rows == 2 {
+		g.note(finding.Note, "two-heading-rows", g.rows[s.row].name(), "the headings stand in two rows and were joined", "")
+	}
 	if len(weak) > 0 {
 		g.note(finding.Note, "arms-by-number", s.list[0].Cell, fmt.Sprintf("the headings %s name the groups by a number or a letter: the first is read as treatment, the second as control", strings.Join(weak, ", ")),
 			"name the columns in columns: if it is the other way round")

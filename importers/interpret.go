@@ -32,30 +32,17 @@ func interpret(g *grid, opt Options) (*Sheet, error) {
 	g.override(opt.Overrides)
 	set.addUnnamed(g)
 	set.guessStudy(g)
+	set.settle()
+	s := &Sheet{File: g.file, Name: g.name, Sheets: g.sheets, Layout: "one row per study"}
 	earlier := g.findings
 	g.findings = nil
-	s := &Sheet{File: g.file, Name: g.name, Sheets: g.sheets, Layout: "one row per study"}
-	set.settle()
-	g.fillMerged(g.rows[set.row].n)
-	r := newRecordReader(g, &set)
-	s.Records = r.readAll()
-	if k := r.armColumn(s.Records, opt.Groups); k >= 0 {
-		rows := len(s.Records)
-		s.Layout = "one row per group"
-		set.list[k].Why, set.list[k].known = "names the group of each row", true
-		s.Records = r.joinArms(s.Records, k, opt.Groups)
-		g.note(finding.Note, "one-row-per-group", set.list[k].Cell, fmt.Sprintf("each row holds one group of a study, named in column %s; %d rows make %d comparisons", columnName(set.list[k].Column), rows, len(s.Records)), "")
-	}
-	tellApart(s.Records)
+	s.readRecords(g, &set, opt)
 	if len(s.Records) == 0 {
 		return nil, problem("no-records", g.place(g.rows[set.row].name()), "there is no row with figures under the headings", "put one row for each prior study under them")
 	}
 	ofCells := g.findings
 	g.findings = earlier
 	set.sayHeadings(g)
-	if set.rows == 2 {
-		g.note(finding.Note, "two-heading-rows", g.rows[set.row].name(), "the headings stand in two rows and were joined", "")
-	}
 	g.findings = append(g.findings, ofCells...)
 	for _, c := range set.list {
 		s.Headings = append(s.Headings, c.Heading)
@@ -68,6 +55,21 @@ func interpret(g *grid, opt Options) (*Sheet, error) {
 	s.Findings = g.findings
 	s.checkRows()
 	return s, nil
+}
+
+// readRecords reads the rows under the headings and joins those that are one record.
+func (s *Sheet) readRecords(g *grid, set *columnSet, opt Options) {
+	g.fillMerged(g.rows[set.row].n)
+	r := newRecordReader(g, set)
+	s.Records = r.readAll()
+	if k := r.armColumn(s.Records, opt.Groups); k >= 0 {
+		rows := len(s.Records)
+		s.Layout = "one row per group"
+		set.list[k].Why, set.list[k].known = "names the group of each row", true
+		s.Records = r.joinArms(s.Records, k, opt.Groups)
+		g.note(finding.Note, "one-row-per-group", set.list[k].Cell, fmt.Sprintf("each row holds one group of a study, named in column %s; %d rows make %d comparisons", columnName(set.list[k].Column), rows, len(s.Records)), "")
+	}
+	tellApart(s.Records)
 }
 
 func (r row) name() string { return fmt.Sprintf("row %d", r.n) }

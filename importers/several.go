@@ -25,70 +25,94 @@ var severalPlain = map[string]string{
 	"coefficient ci": "coefficient|ci lower|ci upper", "!coefficient se": "coefficient|standard error", "beta ci": "standardized beta|ci lower|ci upper", "!beta se": "standardized beta|standard error",
 }
 
-// composeSeveral reads a heading that announces several figures a cell.
-func (u *understood) composeSeveral(fs []feature, marked bool) bool {
-	var f feature
-	var list []string
-	weak, second := false, ""
+// announced is what a heading of several figures a cell names, in the order in which it does.
+type announced struct {
+	list        []string // figures, "%" among them
+	arm, second string   // groups; the second one in "n (treatment/control)"
+	weak        bool
+	time        string
+	log         bool
+	scale       effect.Scale
+}
+
+// announce collects the features; false when a side ("lower") says that the heading is about one limit.
+func announce(fs []feature) (a announced, ok bool) {
 	for i, g := range fs {
 		switch {
 		case g.side != "":
-			return false
+			return a, false
 		case g.arm != "" && (g.base == "" || i > 0 && g.weak):
-			if f.arm != "" && f.arm != g.arm {
-				second = g.arm
-				weak = weak || g.weak
+			if a.arm != "" && a.arm != g.arm {
+				a.second = g.arm
+				a.weak = a.weak || g.weak
 				continue
 			}
-			f.arm, weak = g.arm, g.weak
+			a.arm, a.weak = g.arm, g.weak
 		case g.percent:
-			list = append(list, "%")
-		case g.base != "" && !slices.Contains(list, g.base):
-			list = append(list, g.base)
+			a.list = append(a.list, "%")
+		case g.base != "" && !slices.Contains(a.list, g.base):
+			a.list = append(a.list, g.base)
 		}
-		f.time += g.time
-		f.log = f.log || g.log
+		a.time += g.time
+		a.log = a.log || g.log
 		if g.scale != "" {
-			f.scale = g.scale
+			a.scale = g.scale
 		}
 	}
-	key := strings.Join(list, " ")
-	if second != "" { // "n (treatment/control)"
-		form, armed := strings.CutPrefix(bases[key], "arm ")
-		if !armed || !marked || f.time != "" {
-			return false
-		}
-		u.meaning, u.weakArm = joinMeanings(Meaning(f.arm+" "+form), Meaning(second+" "+form)), weak
-		return true
+	if a.time == "post" {
+		a.time = ""
 	}
-	form, armed := severalForms[key]
-	if !armed && marked {
-		form, armed = severalForms["!"+key]
-	}
-	if !armed {
-		form = severalPlain[key]
-		if form == "" && marked {
-			form = severalPlain["!"+key]
-		}
-	}
-	if form == "" || f.arm != "" && !armed && key != "ci" || f.time != "" && f.time != "post" && (key != "mean sd" || f.time != "pre" && f.time != "change") {
+	return a, true
+}
+
+// composeSeveral reads a heading that announces several figures a cell.
+func (u *understood) composeSeveral(fs []feature, marked bool) bool {
+	a, ok := announce(fs)
+	if !ok {
 		return false
 	}
-	if f.time == "post" {
-		f.time = ""
+	key := strings.Join(a.list, " ")
+	if a.second != "" { // "n (treatment/control)"
+		form, armed := strings.CutPrefix(bases[key], "arm ")
+		if !armed || !marked || a.time != "" {
+			return false
+		}
+		u.meaning, u.weakArm = joinMeanings(Meaning(a.arm+" "+form), Meaning(a.second+" "+form)), a.weak
+		return true
+	}
+	form, armed := severalForm(key, marked)
+	timed := key == "mean sd" && (a.time == "pre" || a.time == "change")
+	if form == "" || a.arm != "" && !armed && key != "ci" || a.time != "" && !timed {
+		return false
 	}
 	var out []Meaning
 	for _, p := range strings.Split(form, "|") {
-		if f.time != "" {
-			p = f.time + " " + p
+		if a.time != "" {
+			p = a.time + " " + p
 		}
-		if f.arm != "" {
-			p = f.arm + " " + p
+		if a.arm != "" {
+			p = a.arm + " " + p
 		}
 		out = append(out, Meaning(p))
 	}
-	u.meaning, u.scale, u.log, u.weakArm, u.percent = joinMeanings(out...), f.scale, f.log, weak, slices.Contains(list, "%")
+	u.meaning, u.scale, u.log, u.weakArm, u.percent = joinMeanings(out...), a.scale, a.log, a.weak, slices.Contains(a.list, "%")
 	return true
+}
+
+// severalForm finds the form of a heading; armed when it is about groups.
+func severalForm(key string, marked bool) (form string, armed bool) {
+	if form, armed = severalForms[key]; armed {
+		return form, true
+	}
+	if marked {
+		if form, armed = severalForms["!"+key]; armed {
+			return form, true
+		}
+	}
+	if form = severalPlain[key]; form == "" && marked {
+		form = severalPlain["!"+key]
+	}
+	return form, false
 }
 
 // several reads a cell that holds several figures: by its column's meaning when that names them, else by what its form
