@@ -40,7 +40,7 @@ func (f Figure) PNG(scale float64) ([]byte, error) {
 		return nil, err
 	}
 	var b bytes.Buffer
-	if err := (&png.Encoder{CompressionLevel: png.BestCompression}).Encode(&b, c.img); err != nil {
+	if err := png.Encode(&b, c.img); err != nil {
 		return nil, err
 	}
 	return b.Bytes(), nil

@@ -12,6 +12,9 @@ import (
 // testAudit runs the accessibility rules of axe-core over the page, light and dark, wide and narrow. The rules come
 // from the development packages of chartscript (npm ci there); without them the audit is skipped.
 func testAudit(t *testing.T, b *browser) {
+	if testing.Short() {
+		t.Skip("the audit takes seconds")
+	}
 	rules, err := os.ReadFile(filepath.Join("chartscript", "node_modules", "axe-core", "axe.min.js"))
 	if err != nil {
 		t.Skip("the audit's rules are not here: run npm ci in reports/chartscript")
