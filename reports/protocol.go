@@ -68,6 +68,16 @@ func (w protocolWriter) shown(c *result.Case) string {
 	return text
 }
 
+// units asks for what DELTA2 wants beside a standardized difference: the same in the units of the outcome.
+func (w protocolWriter) units(say func(string, ...any)) {
+	if w.p.Size.Study.Outcome == "continuous" && w.p.Size.Study.SD == nil && w.p.Size.Scale.Name == "standardized-mean-difference" {
+		say("[State the difference and the standard deviation in the units of the outcome: a standardized difference alone says little to a reader.]")
+	}
+	if w.p.Size.Study.Outcome == "binary" {
+		say("The %s leads; the proportions follow from it.", w.p.Size.Scale.Words)
+	}
+}
+
 func withArticle(s string) string {
 	if s != "" && strings.ContainsRune("aeiou", rune(s[0])) {
 		return "an " + s
@@ -108,6 +118,7 @@ func (w protocolWriter) protocol() string {
 		say("[Name the primary outcome and when it is measured.]")
 	}
 	say("The study is planned for %s.", w.shown(c))
+	w.units(say)
 	if sc != nil {
 		say("This is the %s.", oneLine(sc.Why))
 	}
@@ -116,6 +127,9 @@ func (w protocolWriter) protocol() string {
 	}
 	w.evidence(say)
 	w.worthwhile(say, sc)
+	if p.Justification != "" {
+		say("The size is justified by: %s.", strings.TrimRight(oneLine(p.Justification), "."))
+	}
 	w.size(say)
 	w.alternatives(say)
 	return strings.Join(s, " ")
@@ -128,6 +142,15 @@ func estimandOf(p *result.Plan, name string) string {
 		}
 	}
 	return ""
+}
+
+// endSentence ends a text with a full stop, unless it ends a sentence already.
+func endSentence(s string) string {
+	s = strings.TrimRight(s, " :;,")
+	if s == "" || strings.HasSuffix(s, ".") || strings.HasSuffix(s, "?") || strings.HasSuffix(s, "!") {
+		return s
+	}
+	return s + "."
 }
 
 func capitalised(s string) string {
@@ -167,9 +190,32 @@ func (w protocolWriter) evidence(say func(string, ...any)) {
 	}
 	for _, a := range pool.SmallStudy {
 		if w.p.Range != nil && a.Name == w.p.Range.AdjustedBy && a.Shown != nil {
-			say("Allowing for selective publication by the %s method leaves %s, if that method's assumption holds.", strings.ReplaceAll(a.Name, "-", " "), plainNumber(a.Shown.Estimate, 2))
+			say("Allowing for selective publication by %s leaves %s, if that method's assumption holds.", methodWords(a.Name), plainNumber(a.Shown.Estimate, 2))
 		}
 	}
+}
+
+// methodWords names a small-study method in running text; methods called after people keep their capitals and hyphen.
+func methodWords(name string) string {
+	switch name {
+	case "henmi-copas":
+		return "the Henmi-Copas interval"
+	case "pet", "peese", "pet-peese":
+		return strings.ToUpper(name)
+	}
+	if name == "trim-and-fill" {
+		return "trim and fill"
+	}
+	return "the " + strings.ReplaceAll(name, "-", " ")
+}
+
+// withThe puts the article before a body ("study board"), unless it has one or is called by its name or initials.
+func withThe(who string) string {
+	who = oneLine(who)
+	if who == "" || strings.HasPrefix(strings.ToLower(who), "the ") || who[0] < 'a' || who[0] > 'z' {
+		return who
+	}
+	return "the " + who
 }
 
 func estimatorWords(name string) string {
@@ -191,9 +237,9 @@ func (w protocolWriter) worthwhile(say func(string, ...any), sc *result.Scenario
 	by := ""
 	switch {
 	case x.Who != "" && x.Source != "":
-		by = fmt.Sprintf(", judged by the %s (%s)", oneLine(x.Who), oneLine(x.Source))
+		by = fmt.Sprintf(", judged by %s (%s)", withThe(x.Who), oneLine(x.Source))
 	case x.Who != "":
-		by = ", judged by the " + oneLine(x.Who)
+		by = ", judged by " + withThe(x.Who)
 	case x.Source != "":
 		by = " (" + oneLine(x.Source) + ")"
 	default:
@@ -324,16 +370,14 @@ func (w protocolWriter) grant() string {
 			pool.K, plural(pool.K, "study", "studies"), plainNumber(pool.Random.Shown.Estimate, 2))
 	}
 	text += fmt.Sprintf(" It has %s%% power for %s.", plainNumber(100*w.ch.Power, 0), w.shown(c))
-	if len(w.p.Threats) > 0 {
-		text += " What could make the number wrong: "
-		var heads []string
-		for _, t := range w.p.Threats {
-			heads = append(heads, strings.TrimRight(oneLine(t.Head), "."))
-		}
-		text += strings.Join(heads, "; ") + "."
-	}
 	if w.ch.Cost != nil && w.p.Size.Study.Cost != nil {
-		text += fmt.Sprintf(" Its cost is %s %s.", plainNumber(*w.ch.Cost, 0), oneLine(w.p.Size.Study.Cost.Currency))
+		text += strings.TrimRight(fmt.Sprintf(" Its cost is %s %s", plainNumber(*w.ch.Cost, 0), oneLine(w.p.Size.Study.Cost.Currency)), " ") + "."
+	}
+	for i, t := range w.p.Threats {
+		if i == 0 {
+			text += " What could make the number wrong:"
+		}
+		text += fmt.Sprintf(" (%d) %s", i+1, endSentence(oneLine(t.Head)+" "+oneLine(t.Text)))
 	}
 	return strings.TrimSpace(text)
 }
