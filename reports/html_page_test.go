@@ -68,15 +68,17 @@ func testPageInBrowser(t *testing.T, b *browser) {
 	}
 }
 
-// No text of a figure may leave its drawing or lie on another text.
-func testFigureTextsDoNotCollide(t *testing.T, b *browser) {
-	const collisions = `(() => { const bad = [];
+// collisions names the texts of drawings that leave their drawing or lie on another.
+const collisions = `(() => { const bad = [];
 	for (const svg of document.querySelectorAll("figure svg")) { const f = svg.getBoundingClientRect(); if (!f.width) continue;
 	 const boxes = [...svg.querySelectorAll("text")].map(e => { const r = e.getBoundingClientRect(); const d = r.height * 0.22; return {s: e.lastChild ? e.lastChild.textContent : "", l: r.left, r: r.right, t: r.top + d, b: r.bottom - d}; });
 	 for (const a of boxes) { if (a.l < f.left - 2 || a.r > f.right + 2 || a.b > f.bottom + 2 || a.t < f.top - 2) bad.push("out: " + a.s); }
 	 for (let i = 0; i < boxes.length; i++) for (let j = i + 1; j < boxes.length; j++) { const a = boxes[i], c = boxes[j];
 	  if (a.l < c.r - 1 && c.l < a.r - 1 && a.t < c.b - 1 && c.t < a.b - 1) bad.push(a.s + " | " + c.s); } }
 	return bad.join("\n"); })()`
+
+// No text of a figure may leave its drawing or lie on another text.
+func testFigureTextsDoNotCollide(t *testing.T, b *browser) {
 	for _, c := range []struct {
 		k   int
 		log bool
