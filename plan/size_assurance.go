@@ -50,7 +50,7 @@ func (s *sizer) assurance() {
 		out.ExpectedPower = fmt.Sprintf("averaged over what the next setting may hold, the chance of success is %s and can't exceed %s", percentWhole(v.Assurance), percentWhole(*out.Ceiling))
 	}
 	if !s.lean {
-		out.Curve = s.averages(a, s.sizes(28), unadjusted, adjusted)
+		out.Curve = s.averages(a, s.sizes(curvePointsOfN), unadjusted, adjusted)
 	}
 }
 
@@ -68,6 +68,9 @@ func (s *sizer) averages(a power.Assurer, ns []int, unadjusted, adjusted power.E
 	})
 	return out
 }
+
+// curvePointsOfN is how many sizes the assurance curve and the panel's grid have; they share them.
+const curvePointsOfN = 26
 
 // sizes are first groups spread over the axis that curves share: evenly in the square root, from the least to twice what the plan needs, the chosen one among them.
 func (s *sizer) sizes(points int) []int {

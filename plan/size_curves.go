@@ -16,15 +16,20 @@ func (s *sizer) curves() {
 		ns = s.sizes(24)
 	}
 	for _, c := range s.out.Cases {
-		if c.N == nil {
-			continue
+		if c.N != nil {
+			s.out.Curves = append(s.out.Curves, result.PowerCurve{Scenario: c.Scenario, Points: make([]result.PowerPoint, len(ns))})
 		}
-		curve := result.PowerCurve{Scenario: c.Scenario, Points: make([]result.PowerPoint, len(ns))}
-		num.Chunks(len(ns), func(i int) {
-			curve.Points[i] = result.PowerPoint{N: ns[i], Total: nOf(s.design.Groups(ns[i])).Total, Power: s.design.Power(c.Effect/s.unit, ns[i]).Any()}
-		})
-		s.out.Curves = append(s.out.Curves, curve)
 	}
+	num.Chunks(len(ns), func(i int) {
+		quick := power.Quick(s.design, ns[i])
+		at := 0
+		for _, c := range s.out.Cases {
+			if c.N != nil {
+				s.out.Curves[at].Points[i] = result.PowerPoint{N: ns[i], Total: nOf(s.design.Groups(ns[i])).Total, Power: quick(c.Effect / s.unit).Any()}
+				at++
+			}
+		}
+	})
 	s.needCurve()
 }
 
@@ -75,7 +80,7 @@ func (s *sizer) grid() {
 	for _, sc := range s.built.Scenarios {
 		far = math.Max(far, s.sign*sc.Effect)
 	}
-	g := &result.Grid{Ns: s.sizes(26)}
+	g := &result.Grid{Ns: s.sizes(curvePointsOfN)}
 	const effects = 25
 	for i := 0; i < effects; i++ {
 		x := s.sign * far * 1.4 * (0.04 + 0.96*float64(i)/(effects-1))
@@ -107,7 +112,11 @@ func (s *sizer) layers(g *result.Grid) {
 	}
 	own := setting{s.set.study.Alpha, s.set.study.Sides, s.set.study.Allocation}
 	list := []setting{own}
-	for _, ratio := range []power.Allocation{own.ratio, {Treatment: 1, Control: 1}, {Treatment: 2, Control: 1}} {
+	other := power.Allocation{Treatment: 2, Control: 1}
+	if own.ratio.String() != "1:1" {
+		other = power.Allocation{Treatment: 1, Control: 1}
+	}
+	for _, ratio := range []power.Allocation{own.ratio, other} {
 		for _, a := range []setting{{0.05, 2, ratio}, {0.01, 2, ratio}, {0.10, 2, ratio}} {
 			known := false
 			for _, l := range list {
@@ -127,12 +136,14 @@ func (s *sizer) layers(g *result.Grid) {
 		if err != nil {
 			return
 		}
-		for _, x := range g.Effects {
-			row := make([]float64, len(g.Ns))
-			for j, n := range g.Ns {
-				row[j] = d.Power(x/s.unit, max(n, d.Info().MinN)).Any()
+		for range g.Effects {
+			l.Power = append(l.Power, make([]float64, len(g.Ns)))
+		}
+		for j, n := range g.Ns {
+			quick := power.Quick(d, max(n, d.Info().MinN))
+			for k, x := range g.Effects {
+				l.Power[k][j] = quick(x / s.unit).Any()
 			}
-			l.Power = append(l.Power, row)
 		}
 		g.Layers[i] = l
 	})
@@ -151,8 +162,7 @@ func (s *sizer) gridAssurance(g *result.Grid) {
 	if s.built.Unadjusted == nil || len(g.Layers) == 0 {
 		return
 	}
-	a := power.Assurer{Design: s.design, Sign: s.sign}
-	for _, p := range s.averages(a, g.Ns, s.scaled(s.built.Unadjusted), s.scaled(s.built.Adjusted)) {
+	for _, p := range s.out.Assurance.Curve {
 		g.Layers[0].Assurance = append(g.Layers[0].Assurance, p.Assurance)
 		if p.Adjusted != nil {
 			g.Layers[0].AssuranceAdjusted = append(g.Layers[0].AssuranceAdjusted, *p.Adjusted)
@@ -162,16 +172,17 @@ func (s *sizer) gridAssurance(g *result.Grid) {
 
 // gridError measures what reading between the points costs: straight in the effect and in the square root of n, at the middle of every cell of the plan's own layer.
 func (s *sizer) gridError(g *result.Grid) float64 {
-	worst := make([]float64, len(g.Effects)-1)
+	worst := make([]float64, len(g.Ns)-1)
 	own := g.Layers[0].Power
-	num.Chunks(len(worst), func(i int) {
-		for j := 0; j+1 < len(g.Ns); j++ {
-			root := (math.Sqrt(float64(g.Ns[j])) + math.Sqrt(float64(g.Ns[j+1]))) / 2
-			n := int(math.Round(root * root))
-			t := (math.Sqrt(float64(n)) - math.Sqrt(float64(g.Ns[j]))) / (math.Sqrt(float64(g.Ns[j+1])) - math.Sqrt(float64(g.Ns[j])))
+	num.Chunks(len(worst), func(j int) {
+		low, high := math.Sqrt(float64(g.Ns[j])), math.Sqrt(float64(g.Ns[j+1]))
+		n := int(math.Round((low + high) * (low + high) / 4))
+		t := (math.Sqrt(float64(n)) - low) / (high - low)
+		quick := power.Quick(s.design, n)
+		for i := 0; i+1 < len(g.Effects); i++ {
 			read := (own[i][j]+own[i+1][j])/2*(1-t) + (own[i][j+1]+own[i+1][j+1])/2*t
-			exact := s.design.Power((g.Effects[i]+g.Effects[i+1])/2/s.unit, n).Any()
-			worst[i] = math.Max(worst[i], math.Abs(read-exact))
+			exact := quick((g.Effects[i] + g.Effects[i+1]) / 2 / s.unit).Any()
+			worst[j] = math.Max(worst[j], math.Abs(read-exact))
 		}
 	})
 	out := 0.0

@@ -32,18 +32,12 @@ type Averaged struct {
 // At is the assurance over each of several distributions with n people in the first group, to about 1e-8.
 //
 // Power in the intended direction runs from 0 to 1 within a few standard errors; that stretch is integrated by adaptive quadrature, with the distribution's own middle
-// as a break; below it power is nothing, beyond it the distribution's own tail is the integral. All distributions share the power values.
+// as a break; below it power is nothing, beyond it the distribution's own tail is the integral. All distributions share the power curve.
 func (a Assurer) At(n int, es ...Effects) []Averaged {
-	from, to := a.stretch(n)
-	memo := map[float64]float64{}
-	power := func(u float64) float64 { // u runs along the intended direction
-		p, ok := memo[u]
-		if !ok {
-			p = a.Design.Power(a.Sign*u, n).Toward(a.Sign)
-			memo[u] = p
-		}
-		return p
-	}
+	quick := Quick(a.Design, n)
+	from, to := a.stretch(quick, n)
+	// u runs along the intended direction.
+	power := newPowerCurve(func(u float64) float64 { return quick(a.Sign * u).Toward(a.Sign) }, from, to)
 	out := make([]Averaged, len(es))
 	for i, e := range es {
 		if e == nil {
@@ -63,15 +57,15 @@ func (a Assurer) At(n int, es ...Effects) []Averaged {
 				breaks = append(breaks, u)
 			}
 		}
-		r := num.Integrate(func(u float64) float64 { return power(u) * density(u) }, from, to, num.IntegrateOptions{Absolute: 2e-10, Relative: 1e-9, Breaks: breaks})
+		r := num.Integrate(func(u float64) float64 { return power.at(u) * density(u) }, from, to, num.IntegrateOptions{Absolute: 1e-9, Relative: 1e-9, Breaks: breaks})
 		out[i] = Averaged{Value: math.Min(1, r.Value+tail), Error: r.Error, Converged: r.Converged}
 	}
 	return out
 }
 
 // stretch is the range of effects, along the intended direction, in which power is neither nothing (below 1e-11) nor all (above 1 - 1e-11).
-func (a Assurer) stretch(n int) (from, to float64) {
-	at := func(u float64) float64 { return a.Design.Power(a.Sign*u, n).Toward(a.Sign) }
+func (a Assurer) stretch(quick func(float64) Rejections, n int) (from, to float64) {
+	at := func(u float64) float64 { return quick(a.Sign * u).Toward(a.Sign) }
 	se := a.Design.StandardError(0, n)
 	if !(se > 0) || math.IsInf(se, 0) {
 		se = 1

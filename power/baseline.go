@@ -91,6 +91,8 @@ func (t baselineT) rule(total float64) *baselineRule {
 func newBaselineRule(total float64) *baselineRule {
 	points := 14
 	switch {
+	case total >= 400:
+		points = 3
 	case total >= 60:
 		points = 4
 	case total >= 20:

@@ -28,6 +28,7 @@ func TestEveryDesignKeepsWhatItDeclares(t *testing.T) {
 			errorRate(t, d, info)
 			rises(t, d, info)
 			sized(t, d, info)
+			agreesQuickly(t, d, info)
 			if info.Symmetric {
 				for _, e := range info.Try {
 					a, b := d.Power(e, info.MinN+9), d.Power(-e, info.MinN+9)
@@ -43,6 +44,19 @@ func TestEveryDesignKeepsWhatItDeclares(t *testing.T) {
 				}
 			}
 		})
+	}
+}
+
+// agreesQuickly holds the quick form of power against the exact one.
+func agreesQuickly(t *testing.T, d Design, info Info) {
+	for _, n := range []int{info.MinN, info.MinN + 1, info.MinN + 5, 24, 130} {
+		q := Quick(d, n)
+		for _, e := range append([]float64{0, -2, 4}, info.Try...) {
+			a, b := d.Power(e, n), q(e)
+			if math.Abs(a.Above-b.Above) > 1e-12 || math.Abs(a.Below-b.Below) > 1e-12 {
+				t.Errorf("n = %d, effect %g: %+v, quickly %+v", n, e, a, b)
+			}
+		}
 	}
 }
 
