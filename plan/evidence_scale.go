@@ -139,6 +139,9 @@ func (r *evidenceReader) fillEstimate(st *result.Study, e *effect.Estimate) {
 	}
 	z := num.NormalQuantileUpper((1 - level) / 2)
 	st.Interval = &result.Interval{Level: level, Lower: value - z*se, Upper: value + z*se, Method: "normal"}
+	if lower, upper, ok := smdInterval(e, level); ok {
+		st.Interval.Lower, st.Interval.Upper, st.Interval.Method = lower, upper, "noncentral-t"
+	}
 	st.Shown = shownOf(r.scale, value, st.Interval.Lower, st.Interval.Upper)
 	st.Route, st.Formula, st.Flipped = e.Route, e.Formula, e.Flipped
 	st.Notes = append(st.Notes, e.Notes...)

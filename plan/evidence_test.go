@@ -102,11 +102,11 @@ func TestScaleByWhatTheColumnsHold(t *testing.T) {
 		value float64
 	}{
 		// ln((12/36)/(18/30)) by hand.
-		"counts": {"study,events treatment,n treatment,events control,n control\nA,12,48,18,48\n", effect.LogOddsRatio, math.Log(12.0 / 36 / (18.0 / 30))},
-		"ratio":  {"study,odds ratio,ci lower,ci upper\nA,0.5,0.25,1\n", effect.LogOddsRatio, math.Log(0.5)},
-		"log":    {"study,log HR,se\nA,-0.2,0.1\n", effect.LogHazardRatio, -0.2},
-		"r":      {"study,r,n\nA,0.5,28\n", effect.FisherZ, math.Atanh(0.5)},
-		"bareSheet":   {"study,estimate,se\nA,0.2,0.1\n", effect.AsGiven, 0.2},
+		"counts":    {"study,events treatment,n treatment,events control,n control\nA,12,48,18,48\n", effect.LogOddsRatio, math.Log(12.0 / 36 / (18.0 / 30))},
+		"ratio":     {"study,odds ratio,ci lower,ci upper\nA,0.5,0.25,1\n", effect.LogOddsRatio, math.Log(0.5)},
+		"log":       {"study,log HR,se\nA,-0.2,0.1\n", effect.LogHazardRatio, -0.2},
+		"r":         {"study,r,n\nA,0.5,28\n", effect.FisherZ, math.Atanh(0.5)},
+		"bareSheet": {"study,estimate,se\nA,0.2,0.1\n", effect.AsGiven, 0.2},
 		// g = J(38) x (11 - 10)/2 with both SDs 2; J(38) = Gamma(19)/(sqrt(19) Gamma(18.5)) (Hedges 1981), its value by mpmath.
 		"means": {"study,n1,mean1,sd1,n2,mean2,sd2\nA,20,11,2,20,10,2\n", effect.StandardizedMeanDifference, 0.5 * 0.980110402130946272803435806123},
 	} {
