@@ -71,7 +71,7 @@ func (t baselineT) at(effect, n1, n2 float64) Rejections {
 		above.Add(rule.weight[i] * r.Above)
 		below.Add(rule.weight[i] * r.Below)
 	}
-	return Rejections{Above: above.Value(), Below: below.Value(), OneSided: t.s.Sides == 1}
+	return Rejections{Above: math.Min(1, above.Value()), Below: math.Min(1, below.Value()), OneSided: t.s.Sides == 1}
 }
 
 // baselineRule averages a function of sqrt B.
