@@ -115,6 +115,7 @@ func (s *stages) assemble(given *File, size *result.Size, assumptions []result.A
 	}
 	if s.built != nil {
 		p.Range = s.built.Range
+		sayInPeople(p.Range, s.info)
 	}
 	p.Assumptions = withoutRepeats(assumptions, size.Study.Assumptions)
 	p.Findings = s.findings(size)

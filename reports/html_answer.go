@@ -171,6 +171,9 @@ func targetSentence(p *result.Plan, c *result.Chosen) string {
 		text += ": " + clipRunes(s.Why, 160)
 	}
 	text += "."
+	if s.InPeople != nil && p.Size.Study.Aim != "equivalence" {
+		text += " In people: " + peopleSentence(p, *s.InPeople)
+	}
 	if c.ScenarioWhy != "" {
 		text += " " + upperFirst(strings.TrimRight(c.ScenarioWhy, ".")) + "."
 	}
@@ -178,6 +181,16 @@ func targetSentence(p *result.Plan, c *result.Chosen) string {
 		text += fmt.Sprintf(" The target for assurance, %s, decides the number.", percentText(*p.Size.Assurance.Target))
 	}
 	return text
+}
+
+// peopleSentence says a standardized effect as people.
+func peopleSentence(p *result.Plan, share float64) string {
+	n := inHundred(share)
+	n = strings.Replace(n, " in 100", " of 100", 1)
+	if g := p.Size.Study.Groups; len(g) > 1 {
+		return fmt.Sprintf("%s in the group ‘%s’ would do better than one person picked from the group ‘%s’.", n, clipRunes(g[0], 40), clipRunes(g[1], 40))
+	}
+	return n + " in the treatment group would do better than one person picked from the control group."
 }
 
 func worthwhileOf(p *result.Plan) *result.Worthwhile {

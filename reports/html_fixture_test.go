@@ -266,6 +266,11 @@ func (f *fixture) rangeOf(p *result.Plan) {
 	if s*lower <= 0 {
 		r.Scenarios[4].NoSize = "at or beyond no effect"
 	}
+	if !f.scale.Log {
+		for i := range r.Scenarios {
+			r.Scenarios[i].InPeople = num(f.z.CDF(r.Scenarios[i].Effect / math.Sqrt2))
+		}
+	}
 	p.Range = r
 }
 

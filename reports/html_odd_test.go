@@ -97,7 +97,7 @@ func TestBannersAndAnswers(t *testing.T) {
 		"one group":       {"in one group"},
 		"non-inferiority": {"not worse by more than the margin"},
 		"no evidence":     {"no prior studies", "There is no evidence sheet"},
-		"no costs":        {"8 chances in 10"},
+		"no costs":        {"8 chances in 10", "In people: 56 of 100 in the group ‘split lesson’ would do better than one person picked from the group ‘whole lesson’."},
 	} {
 		page, err := HTML(odd[name])
 		if err != nil {

@@ -60,6 +60,9 @@ type Scenario struct {
 	Plan   bool    `json:"plan"`   // true: a choice (plan's ink); false: evidence
 	NoSize string  `json:"noSize"` // why no size exists for it, "" when one does
 	Target bool    `json:"target"` // the scenario that the study is sized for
+	// InPeople is the chance that one person picked from the treatment group does better than one picked from the control
+	// group, for a standardized mean difference; null elsewhere.
+	InPeople *float64 `json:"inPeople"`
 }
 
 // Chance is the chance that the true effect in the next setting lies beyond a value.
