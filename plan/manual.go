@@ -69,7 +69,12 @@ func methodsUsed(p *result.Plan) []result.MethodUsed {
 		}
 	}
 	if p.Pool != nil {
-		use(p.Pool.Scale.Name, p.Pool.Random.Method, "prediction-interval")
+		use(p.Pool.Scale.Name, p.Pool.Random.Method, p.Pool.Common.Method, "prediction-interval")
+		for _, m := range []*result.Pooled{p.Pool.MantelHaenszel, p.Pool.Peto} {
+			if m != nil && m.Estimate != nil {
+				use(m.Method)
+			}
+		}
 		if iv := p.Pool.Random.Interval; iv != nil {
 			use(iv.Method)
 		}

@@ -50,3 +50,21 @@ func TestEveryEntryIsWhole(t *testing.T) {
 		}
 	}
 }
+
+func TestEveryTestOfAStudyHasAnEntry(t *testing.T) {
+	for _, b := range []BareSpec{{}, {BaselineR: 0.5}, {Test: "z"}, {Arrangement: "paired"}, {Arrangement: "single-group"},
+		{Outcome: "binary", ControlRisk: 0.3, Effects: []float64{0.6}}, {Outcome: "binary", ControlRisk: 0.3, Effects: []float64{0.6}, Test: "fisher-exact"}} {
+		if b.Effects == nil {
+			b.Effects = []float64{0.5}
+		}
+		s, err := SizeBare(b)
+		if err != nil {
+			t.Fatalf("%+v: %v", b, err)
+		}
+		for _, name := range []string{s.Test.Name, s.Study.Arrangement} {
+			if m, _, ok := FindMethod(name); !ok || m.Name != name {
+				t.Errorf("%s has no entry in the manual", name)
+			}
+		}
+	}
+}

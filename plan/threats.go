@@ -79,11 +79,11 @@ func (t *threatFinder) budget() {
 	if c == nil || !c.OverBudget {
 		return
 	}
-	text := "the size asked for costs more than the budget allows"
+	text := "the number asked for costs more than it allows."
 	if c.AffordableToEnrol != nil {
-		text += fmt.Sprintf("; it pays for %s people", grouped(*c.AffordableToEnrol))
+		text = fmt.Sprintf("it pays for %s of the %s people.", grouped(*c.AffordableToEnrol), grouped(c.ToEnrol.Total))
 	}
-	t.add(9, "The budget does not reach.", "As planned %s.", text)
+	t.add(9, "The budget falls short:", "%s", text)
 }
 
 // sensitivity takes the assumption whose stated uncertainty moves the number most.
