@@ -66,9 +66,23 @@ func headingWords(h string) []string {
 var greek = strings.NewReplacer("χ", " chi ", "Χ", " chi ", "η", " eta ", "α", " alpha ", "β", " beta ", "Δ", " change ", "δ", " change ",
 	"ρ", " r ", "θ", " theta ", "µ", "u", "μ", "u", "No.", "number ", "no.", "number ", "№", "number ", "RoB", "rob", "#", "number ", "n/N", "events total", "±", " plus minus ", "+/-", " plus minus ", "CIlo", "CI lo", "CIup", "CI up", "CIhi", "CI hi")
 
-// understand reads a heading. groups are the names of the groups, treatment first, where they are known.
+// understand reads a heading. groups are the names of the groups, treatment first, where they are known. A last bracket
+// that may be a unit counts as one only where the heading makes no sense with it: "Mean (g)", but "Effect size (g)".
 func understand(typed string, groups []string) (understood, bool) {
-	words := headingWords(withoutUnit(typed))
+	u, ok := understandAll(typed, groups)
+	if ok && u.rest == "" {
+		return u, true
+	}
+	if short := withoutUnit(typed); short != typed {
+		if v, fine := understandAll(short, groups); fine && (v.rest == "" || !ok) {
+			return v, true
+		}
+	}
+	return u, ok
+}
+
+func understandAll(typed string, groups []string) (understood, bool) {
+	words := headingWords(typed)
 	if len(words) == 0 || len(words) > 14 {
 		return understood{}, false
 	}
@@ -80,7 +94,10 @@ func understand(typed string, groups []string) (understood, bool) {
 	if arm != "" {
 		fs = append(fs, feature{arm: arm})
 	}
-	if u.composeSeveral(fs, strings.ContainsAny(typed, "([/,;±+&")) || u.compose(fs) {
+	if u.composeSeveral(fs, strings.ContainsAny(typed, "([/,;±+&"), strings.Contains(typed, "/") || strings.Contains(typed, " of ")) || u.compose(fs) {
+		if u.meaning == Relevance || u.meaning == Notes {
+			u.rest = "" // "relevance to our setting", "notes on extraction"
+		}
 		return u, true
 	}
 	return understood{}, false
@@ -175,8 +192,6 @@ func (f feature) alternative(phrase string, n, all int) feature {
 		switch phrase {
 		case "t":
 			return feature{base: "t"}
-		case "l", "u", "to", "from", "left", "right":
-			return feature{}
 		}
 	}
 	return f
@@ -188,7 +203,7 @@ var bases = map[string]string{
 	"year":  "year", "risk": "risk of bias", "relevance": "relevance", "subgroup": "subgroup", "status": "status",
 	"notes": "notes", "direction": "direction", "better": "higher is better", "scale": "scale", "sides": "sides", "p+sides": "p",
 	"mean": "arm mean", "sd": "arm sd", "se": "arm se", "n": "arm n", "total": "arm n", "n+total": "arm n",
-	"mean+sd": "", "median": "arm median", "q1": "arm q1", "q3": "arm q3", "min": "arm min", "max": "arm max",
+	"mean+sd": "", "mean+se": "arm se", "clustersize+mean": "cluster size", "median": "arm median", "q1": "arm q1", "q3": "arm q3", "min": "arm min", "max": "arm max",
 	"events": "arm events", "events+n": "arm events", "nonevents": "arm non-events", "n+nonevents": "arm non-events",
 	"events+total": "total events", "proportion": "arm proportion", "events+proportion": "arm proportion", "rate": "arm rate",
 	"events+rate": "arm rate", "persontime": "arm person-time", "estimate": "estimate", "variance": "variance", "estimate+variance": "variance",
@@ -208,6 +223,7 @@ func (u *understood) compose(fs []feature) bool {
 	var f feature
 	var list []string
 	percent := false
+	maybe, weakSide := "", ""
 	for _, g := range fs {
 		if g.arm != "" && g.base == "" {
 			if f.arm != "" && f.arm != g.arm {
@@ -226,7 +242,14 @@ func (u *understood) compose(fs []feature) bool {
 			}
 		}
 		percent = percent || g.percent
-		f.side += g.side
+		if g.maybe != "" {
+			maybe = g.maybe
+		}
+		if !g.weak || g.base != "" {
+			f.side += g.side
+		} else {
+			weakSide += g.side
+		}
 		f.time += g.time
 		f.log = f.log || g.log
 		if g.scale != "" {
@@ -238,6 +261,12 @@ func (u *understood) compose(fs []feature) bool {
 		if g.base != "" && !slices.Contains(list, g.base) {
 			list = append(list, g.base)
 		}
+	}
+	if f.arm == "" && maybe != "" {
+		f.arm, u.weakArm = maybe, true
+	}
+	if f.side == "" && slices.Contains(list, "ci") {
+		f.side = weakSide
 	}
 	slices.Sort(list)
 	if len(list) > 1 && !slices.Contains(list, "n") && !slices.Contains(list, "events") {

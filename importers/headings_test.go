@@ -35,6 +35,9 @@ func TestUnderstand(t *testing.T) {
 		"mean change (SD) treatment": "treatment change mean + treatment change sd", "Mean (95% CI) control": "control mean + control ci lower + control ci upper", "events of n, control": "control events + control n",
 		"Mittelwert (Kontrolle)": "control mean", "Standardabweichung Kontrollgruppe": "control sd", "Année": Year, "Étude": Study, "Écart-type (témoin)": "control sd", "ID": Study,
 		"N (treatment/control)": "treatment n + control n", "Events (T/C)": "treatment events + control events",
+		"Intervention group (n)": "treatment n", "Mean (C)": "control mean", "Mean (g)": "mean", "Effect size (g)": Estimate, "Var(g)": Variance, "Post-intervention mean (control)": "control mean",
+		"Post-treatment mean (SD) control": "control mean + control sd", "CI lower bound (95%)": CILower, "conf.low": CILower, "P-value (two-tailed)": P, "RoB 2": RiskOfBias, "Relevance to our setting": Relevance,
+		"Number of pairs": N, "Standard error of mean (control)": "control se", "Cluster size (mean)": "cluster size", "Events (n) control": "control events", "t-test statistic": "t", "corr. coefficient": "r", "95% CI from": CILower, "Mean ± SD (C)": "control mean + control sd",
 		"mean t": "treatment mean", "sd c": "control sd", "MEAN-E": "treatment mean", "group 1 mean": "treatment mean", "group 2 SD": "control sd", "Arm A n": "treatment n", "Arm B n": "control n",
 	} {
 		u, ok := understand(typed, nil)
@@ -46,7 +49,7 @@ func TestUnderstand(t *testing.T) {
 
 func TestUnderstandLeavesAlone(t *testing.T) {
 	for _, typed := range []string{"", "  ", "12", "Mean age", "Country", "Shift length", "42.5", "Adams 2009", "SE control estimate", "treatment", "control", "Intervention description",
-		"lower upper", "treatment control mean", "doi", "a long sentence about how the mean of the standard deviation was found in each study of the set"} {
+		"lower upper", "n per arm", "to", "Subgroup within study", "treatment control mean", "doi", "a long sentence about how the mean of the standard deviation was found in each study of the set"} {
 		if u, ok := understand(typed, nil); ok && u.rest == "" {
 			t.Errorf("%q was understood as %q", typed, u.meaning)
 		}

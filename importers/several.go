@@ -10,12 +10,13 @@ import (
 )
 
 // severalForms are the headings that announce several figures a cell: what stands in them, in order, and the figures.
-// The mark ! asks for a bracket or another sign between them, since "SE of the estimate" is one figure.
+// The mark ! asks for a bracket or another sign between them, since "SE of the estimate" is one figure; the mark / asks for
+// a slash or the word of.
 var severalForms = map[string]string{
 	"mean sd": "mean|sd", "!mean se": "mean|se", "mean ci": "mean|ci lower|ci upper", "n mean sd": "n|mean|sd", "mean sd n": "mean|sd|n",
 	"!n mean se": "n|mean|se", "median iqr": "median|q1|q3", "median range": "median|min|max", "n median iqr": "n|median|q1|q3", "median q1 q3": "median|q1|q3",
-	"q1 q3": "q1|q3", "min max": "min|max", "iqr": "q1|q3", "range": "min|max", "!events n": "events|n", "events total": "events|n",
-	"n %": "events|proportion", "events n %": "events|n|proportion", "events total %": "events|n|proportion", "mean median": "",
+	"q1 q3": "q1|q3", "min max": "min|max", "iqr": "q1|q3", "range": "min|max", "/events n": "events|n", "/events total": "events|n",
+	"n %": "events|proportion", "/events n %": "events|n|proportion", "/events total %": "events|n|proportion", "mean median": "",
 }
 
 // severalPlain are the same about the comparison as a whole.
@@ -37,9 +38,10 @@ type announced struct {
 
 // announce collects the features; false when a side ("lower") says that the heading is about one limit.
 func announce(fs []feature) (a announced, ok bool) {
+	maybe := ""
 	for i, g := range fs {
 		switch {
-		case g.side != "":
+		case g.side != "" && !g.weak:
 			return a, false
 		case g.arm != "" && (g.base == "" || i > 0 && g.weak):
 			if a.arm != "" && a.arm != g.arm {
@@ -54,6 +56,9 @@ func announce(fs []feature) (a announced, ok bool) {
 			a.list = append(a.list, g.base)
 		}
 		a.time += g.time
+		if g.maybe != "" {
+			maybe = g.maybe
+		}
 		a.log = a.log || g.log
 		if g.scale != "" {
 			a.scale = g.scale
@@ -62,11 +67,14 @@ func announce(fs []feature) (a announced, ok bool) {
 	if a.time == "post" {
 		a.time = ""
 	}
+	if a.arm == "" && maybe != "" {
+		a.arm, a.weak = maybe, true
+	}
 	return a, true
 }
 
 // composeSeveral reads a heading that announces several figures a cell.
-func (u *understood) composeSeveral(fs []feature, marked bool) bool {
+func (u *understood) composeSeveral(fs []feature, marked, slashed bool) bool {
 	a, ok := announce(fs)
 	if !ok {
 		return false
@@ -74,13 +82,13 @@ func (u *understood) composeSeveral(fs []feature, marked bool) bool {
 	key := strings.Join(a.list, " ")
 	if a.second != "" { // "n (treatment/control)"
 		form, armed := strings.CutPrefix(bases[key], "arm ")
-		if !armed || !marked || a.time != "" {
+		if !armed || !slashed || a.time != "" {
 			return false
 		}
 		u.meaning, u.weakArm = joinMeanings(Meaning(a.arm+" "+form), Meaning(a.second+" "+form)), a.weak
 		return true
 	}
-	form, armed := severalForm(key, marked)
+	form, armed := severalForm(key, marked, slashed)
 	timed := key == "mean sd" && (a.time == "pre" || a.time == "change")
 	if form == "" || a.arm != "" && !armed && key != "ci" || a.time != "" && !timed {
 		return false
@@ -100,9 +108,14 @@ func (u *understood) composeSeveral(fs []feature, marked bool) bool {
 }
 
 // severalForm finds the form of a heading; armed when it is about groups.
-func severalForm(key string, marked bool) (form string, armed bool) {
+func severalForm(key string, marked, slashed bool) (form string, armed bool) {
 	if form, armed = severalForms[key]; armed {
 		return form, true
+	}
+	if slashed {
+		if form, armed = severalForms["/"+key]; armed {
+			return form, true
+		}
 	}
 	if marked {
 		if form, armed = severalForms["!"+key]; armed {

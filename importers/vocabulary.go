@@ -13,6 +13,8 @@ type feature struct {
 	sides int
 	// weak features give way when the heading makes no sense with them ("t" is an arm only beside a figure).
 	weak bool
+	// maybe is the arm that the phrase names where no other word does ("post treatment").
+	maybe string
 	// percent marks "%", "per cent".
 	percent bool
 }
@@ -35,7 +37,7 @@ func buildPhrases() map[string]feature {
 	base("study3", "author", "authors", "first author", "name", "reference", "ref", "citation", "source", "title of study", "autor", "autoren", "auteur", "auteurs", "autores", "autore")
 	base("study4", "id", "record", "record id", "ref id", "refid", "study number", "study no")
 	base("year", "year", "yr", "publication year", "year of publication", "pub year", "year published", "publication date", "jahr", "annee", "ano", "anno", "jaar", "aar")
-	base("risk", "risk of bias", "rob", "overall risk of bias", "risk of bias overall", "rob overall", "overall rob", "bias risk", "risk of bias judgement", "risk of bias judgment")
+	base("risk", "risk of bias", "rob", "rob 2", "rob 2 overall", "overall risk of bias", "risk of bias overall", "rob overall", "overall rob", "bias risk", "risk of bias judgement", "risk of bias judgment")
 	base("relevance", "relevance", "relevance weight", "similarity", "closeness", "relevance 0 1")
 	base("subgroup", "subgroup", "sub group", "strata", "stratum", "subset")
 	base("status", "status", "state", "included", "include", "inclusion")
@@ -49,7 +51,7 @@ func buildPhrases() map[string]feature {
 	base("mean", "mean", "m", "means", "average", "avg", "mean score", "mean value", "x bar", "post test mean", "mw", "mittelwert", "mittel", "moyenne", "media", "gemiddelde")
 	base("sd", "sd", "s d", "std", "stdev", "std dev", "st dev", "stddev", "standard deviation", "standard deviations", "std deviation", "standard dev", "sds", "std dev s", "standardabweichung", "stabw", "ecart type", "desviacion estandar", "desviacion tipica", "deviazione standard", "standaarddeviatie")
 	base("se", "se", "s e", "sem", "s e m", "std err", "std error", "stderr", "standard error", "standard errors", "st error", "standard err", "standard error of the mean", "standard error mean", "std error of the mean", "standardfehler", "erreur standard", "erreur type", "error estandar", "errore standard", "standaardfout")
-	base("n", "n", "sample size", "size", "sample", "number", "no", "num", "nr", "participants", "patients", "subjects", "people", "persons", "pupils", "students", "animals", "total n", "n total", "group size", "number of participants", "number of patients", "number of subjects", "number of people", "no of participants", "no of patients", "no of subjects", "n participants", "n patients", "n subjects", "n analysed", "n analyzed", "number analysed", "number analyzed", "n randomised", "n randomized", "number randomised", "number randomized", "total sample size", "total sample", "total number", "total participants", "total patients", "total people", "denominator", "overall n", "n overall", "anzahl", "effectif", "aantal", "numero", "stichprobe", "stichprobengrosse", "fallzahl")
+	base("n", "n", "sample size", "size", "sample", "number", "no", "num", "nr", "participants", "patients", "subjects", "people", "persons", "pupils", "students", "animals", "total n", "n total", "group size", "number of participants", "number of patients", "number of subjects", "number of people", "no of participants", "no of patients", "no of subjects", "pairs", "n pairs", "number of pairs", "n participants", "n patients", "n subjects", "n analysed", "n analyzed", "number analysed", "number analyzed", "n randomised", "n randomized", "number randomised", "number randomized", "total sample size", "total sample", "total number", "total participants", "total patients", "total people", "denominator", "overall n", "n overall", "anzahl", "effectif", "aantal", "numero", "stichprobe", "stichprobengrosse", "fallzahl")
 	base("total", "total", "totals", "sum", "overall", "all")
 	base("median", "median", "mdn", "med", "medians")
 	base("q1", "q 1", "lower quartile", "first quartile", "1 st quartile", "25 th percentile", "25 percentile", "p 25", "25 th centile", "quartile 1", "iqr lower", "lower iqr", "iqr low")
@@ -81,7 +83,7 @@ func buildPhrases() map[string]feature {
 	base("p", "p", "p value", "pvalue", "p val", "pval", "significance", "sig", "probability", "prob", "exact p", "p level")
 	says(feature{base: "p", sides: 1}, "one sided p", "p one sided", "one tailed p", "p one tailed", "1 sided p", "1 tailed p", "p value one sided", "one sided p value", "p 1 sided", "p 1 tailed")
 	says(feature{base: "p", sides: 2}, "two sided p", "p two sided", "two tailed p", "p two tailed", "2 sided p", "2 tailed p", "p value two sided", "two sided p value", "p 2 sided", "p 2 tailed", "sig 2 tailed")
-	base("r", "r", "correlation", "corr", "pearson r", "pearsons r", "correlation coefficient", "pearson correlation", "r value", "cor", "pearson")
+	base("r", "r", "correlation", "corr", "corr coefficient", "cor coefficient", "pearson r", "pearsons r", "correlation coefficient", "pearson correlation", "r value", "cor", "pearson")
 	base("pbr", "point biserial r", "point biserial", "r pb", "rpb", "point biserial correlation")
 	base("eta", "eta squared", "eta 2", "eta sq", "partial eta squared", "partial eta 2", "eta square", "partial eta sq")
 	base("covariates", "covariates", "number of covariates", "n covariates", "covariates adjusted", "adjusted covariates")
@@ -131,8 +133,14 @@ func buildPhrases() map[string]feature {
 	says(feature{arm: "control", weak: true}, "2", "c", "group 2", "arm 2", "grp 2", "g 2", "group ii", "arm b", "group b")
 
 	// Sides of an interval, times of measurement.
-	says(feature{side: "lower"}, "lower", "low", "lo", "ll", "lcl", "lower limit", "lower bound", "lower ci", "ci lower", "ci low", "ci l", "l", "from", "lci", "lb", "ci lo", "lower cl", "cil", "ci ll", "lower confidence limit", "ci from", "ci lb", "left", "lower 95", "low ci", "cilow", "cilo", "cilower", "lowerci")
-	says(feature{side: "upper"}, "upper", "up", "hi", "high", "ul", "ucl", "upper limit", "upper bound", "upper ci", "ci upper", "ci high", "ci u", "u", "to", "uci", "ub", "ci hi", "upper cl", "ciu", "ci ul", "upper confidence limit", "ci to", "ci ub", "ci up", "right", "upper 95", "high ci", "ciup", "cihigh", "cihi", "ciupper", "upperci")
+	says(feature{side: "lower"}, "lower", "low", "lo", "ll", "lcl", "lower limit", "lower bound", "ci lower bound", "ci lower limit", "conf low", "lower conf", "lower ci", "ci lower", "ci low", "ci l", "lci", "lb", "ci lo", "lower cl", "cil", "ci ll", "lower confidence limit", "ci from", "ci lb", "lower 95", "low ci", "cilow", "cilo", "cilower", "lowerci")
+	says(feature{side: "upper"}, "upper", "up", "hi", "high", "ul", "ucl", "upper limit", "upper bound", "ci upper bound", "ci upper limit", "conf high", "upper conf", "upper ci", "ci upper", "ci high", "ci u", "uci", "ub", "ci hi", "upper cl", "ciu", "ci ul", "upper confidence limit", "ci to", "ci ub", "ci up", "upper 95", "high ci", "ciup", "cihigh", "cihi", "ciupper", "upperci")
+	says(feature{side: "lower", weak: true}, "l", "from", "left")
+	says(feature{side: "upper", weak: true}, "u", "to", "right")
+	says(feature{time: "pre", maybe: "treatment"}, "pre treatment", "pre intervention")
+	says(feature{time: "post", maybe: "treatment"}, "post treatment", "post intervention")
+	says(feature{sides: 1}, "one sided", "one tailed", "1 sided", "1 tailed")
+	says(feature{sides: 2}, "two sided", "two tailed", "2 sided", "2 tailed")
 	says(feature{time: "pre"}, "pre", "baseline", "pretest", "pre test", "pretreatment", "before", "bl", "initial", "at baseline", "t 0")
 	says(feature{time: "post"}, "post", "posttest", "post test", "final", "endpoint", "end point", "after", "follow up", "followup", "posttreatment", "at end", "end of study", "end", "outcome")
 	says(feature{time: "change"}, "change", "change score", "change from baseline", "gain", "change score s", "delta", "gain score")
@@ -141,8 +149,8 @@ func buildPhrases() map[string]feature {
 
 // filler are words of a heading that carry no meaning of their own.
 var filler = map[string]bool{"of": true, "the": true, "in": true, "for": true, "at": true, "group": true, "grp": true,
-	"arm": true, "condition": true, "value": true, "values": true, "reported": true, "a": true, "and": true, "per": true,
-	"with": true, "on": true, "by": true, "score": true, "scores": true, "groups": true, "plus": true, "minus": true}
+	"arm": true, "condition": true, "value": true, "values": true, "reported": true, "a": true, "and": true,
+	"with": true, "on": true, "by": true, "score": true, "scores": true, "groups": true, "plus": true, "minus": true, "bound": true, "limit": true, "statistic": true, "judgement": true, "judgment": true}
 
 // aside are headings that people use for columns the tool keeps as they are; no finding says that they were not understood.
 var aside = map[string]bool{"doi": true, "url": true, "link": true, "country": true, "journal": true, "design": true,
@@ -157,5 +165,5 @@ var units = map[string]bool{"ms": true, "s": true, "sec": true, "secs": true, "s
 	"minutes": true, "h": true, "hr": true, "hrs": true, "hours": true, "d": true, "days": true, "weeks": true, "months": true,
 	"years": true, "yr": true, "kg": true, "g": true, "mg": true, "µg": true, "ug": true, "lb": true, "cm": true, "mm": true,
 	"m": true, "km": true, "ml": true, "l": true, "dl": true, "mmhg": true, "mm hg": true, "bpm": true, "points": true,
-	"pts": true, "score": true, "scale": true, "units": true, "mmol l": true, "mg dl": true, "kcal": true, "kj": true, "n": true,
+	"pts": true, "score": true, "scale": true, "units": true, "mmol l": true, "mg dl": true, "kcal": true, "kj": true,
 	"c": true, "raw": true, "z": true, "hz": true, "kpa": true, "ng ml": true, "iu": true, "usd": true, "eur": true}
