@@ -4,9 +4,13 @@ import (
 	"archive/zip"
 	"bytes"
 	"fmt"
+	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 	"time"
+
+	"github.com/xuri/excelize/v2"
 )
 
 // pack makes a zip of parts.
@@ -122,5 +126,33 @@ func TestOtherContainers(t *testing.T) {
 	} {
 		_, err := Read(write(t, "x.xlsx", pack(t, c.files)), Options{})
 		t.Run(name, func(t *testing.T) { wantProblem(t, err, c.kind) })
+	}
+}
+
+func TestPasswordProtected(t *testing.T) {
+	f := excelize.NewFile()
+	defer f.Close()
+	if err := f.SetCellValue("Sheet1", "A1", "study"); err != nil {
+		t.Fatal(err)
+	}
+	p := filepath.Join(t.TempDir(), "secret.xlsx")
+	if err := f.SaveAs(p, excelize.Options{Password: "x"}); err != nil {
+		t.Fatal(err)
+	}
+	_, err := Read(p, Options{})
+	wantProblem(t, err, "file-encrypted", "password")
+}
+
+// Files are told apart by their content: a wrong name does no harm.
+func TestWrongNames(t *testing.T) {
+	want := gist(mustRead(t, filepath.Join("testdata", "merged.xls"), Options{}))
+	for from, to := range map[string]string{"merged.xls": "a.xlsx", "merged.ods": "a.xls"} {
+		data, err := os.ReadFile(filepath.Join("testdata", from))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := gist(mustRead(t, write(t, to, data), Options{})); got != want {
+			t.Errorf("%s as %s: %s", from, to, got)
+		}
 	}
 }
