@@ -27,46 +27,55 @@ type plotRow struct {
 
 func (r rowPlot) draw() scene {
 	s := scene{W: r.o.width()}
-	nameRoom, cellRoom := 60.0, 0.0
-	for _, row := range r.rows {
-		nameRoom = math.Max(nameRoom, textWidth(row.name, 12, row.bold))
+	name, rowH := r.measure()
+	columns := r.columnSet().within(s.W - name - 120)
+	x := r.domain(math.Max(name+14, 24), s.W-columns.room-12)
+	top := 22.0
+	bottom := top + rowH*float64(len(r.rows)) + 4
+	r.backdrop(&s, x, top, bottom)
+	columns.draw(&s, s.W-columns.room, 12, func(row int) float64 { return r.baseline(top, rowH, row) })
+	for j, row := range r.rows {
+		r.drawRow(&s, x, row, top+rowH*(float64(j)+0.5), name)
+	}
+	s.H = r.axisLine(&s, x, bottom)
+	return s
+}
+
+// measure gives the room of the names and the height of a row; on a telephone the name stands above its line, and
+// elsewhere a long one takes two lines.
+func (r rowPlot) measure() (name, rowH float64) {
+	if r.o.narrow {
+		return 0, 36
 	}
 	const mostName = 290
-	two := nameRoom > mostName // some names take two lines
-	nameRoom = math.Min(nameRoom, mostName)
-	columns := r.columns
-	top, rowH := 22.0, 22.0
+	name, rowH = 60, 22
+	for _, row := range r.rows {
+		name = math.Max(name, textWidth(row.name, 12, row.bold))
+	}
 	if len(r.rows) > 30 {
 		rowH = 17
 	}
-	if two && !r.o.narrow {
+	if name > mostName {
 		rowH = 30
 	}
-	if r.o.narrow { // the name stands above its line
-		nameRoom, rowH = 0, 36
-		if len(columns) > 1 {
-			columns = columns[:1]
-		}
+	return math.Min(name, mostName), rowH
+}
+
+// columnSet is the numbers at the right; on a telephone the first column alone.
+func (r rowPlot) columnSet() columnSet {
+	heads := r.columns
+	if r.o.narrow && len(heads) > 1 {
+		heads = heads[:1]
 	}
-	widths := make([]float64, len(columns))
-	for i, h := range columns {
-		widths[i] = textWidth(h, 11, false)
-		for _, row := range r.rows {
-			if i < len(row.cells) {
-				widths[i] = math.Max(widths[i], textWidth(row.cells[i], 12, row.bold))
-			}
-		}
-		widths[i] += 16
-		cellRoom += widths[i]
+	cells := make([][]string, len(r.rows))
+	for i, row := range r.rows {
+		cells[i] = row.cells
 	}
-	if most := s.W - nameRoom - 120; cellRoom > most { // hostile or very long cells
-		cellRoom = most
-		for i := range widths {
-			widths[i] = cellRoom / float64(len(widths))
-		}
-	}
-	x := r.domain(math.Max(nameRoom+14, 24), s.W-cellRoom-12)
-	bottom := top + rowH*float64(len(r.rows)) + 4
+	return measureColumns(heads, cells, func(row, _ int) bool { return r.rows[row].bold })
+}
+
+// backdrop draws what runs through all rows: the band, the mean, no effect, the smallest worthwhile effect.
+func (r rowPlot) backdrop(s *scene, x axis, top, bottom float64) {
 	if r.band[0] != r.band[1] {
 		a, b := x.cut(r.band[0]), x.cut(r.band[1])
 		s.add(rect(a, top-2, b-a, bottom-top+2, inkEvidenceWash))
@@ -86,24 +95,6 @@ func (r rowPlot) draw() scene {
 		}
 		s.add(e)
 	}
-	at := s.W - cellRoom
-	for i, h := range columns {
-		at += widths[i]
-		s.add(label(at, 12, h, inkSoft, 11).end())
-		for j, row := range r.rows {
-			if i < len(row.cells) {
-				cell, _ := clipText(row.cells[i], widths[i], 12, row.bold)
-				e := label(at, r.baseline(top, rowH, j), cell, inkText, 12).end()
-				e.Bold = row.bold
-				s.add(e)
-			}
-		}
-	}
-	for j, row := range r.rows {
-		r.drawRow(&s, x, row, top+rowH*(float64(j)+0.5), nameRoom)
-	}
-	s.H = r.axisLine(&s, x, bottom)
-	return s
 }
 
 func (r rowPlot) drawRow(s *scene, x axis, row plotRow, y, nameRoom float64) {
