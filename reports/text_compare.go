@@ -7,8 +7,9 @@ import (
 	"footing/plan/result"
 )
 
-// TextCompare writes what changed between two editions.
-func TextCompare(c *result.Comparison, o TextOptions) string {
+// TextCompare writes what changed between two editions; with orders also what moved the number in each order of its
+// parts.
+func TextCompare(c *result.Comparison, orders bool, o TextOptions) string {
 	w := &textWriter{o: o}
 	w.head(c.Plan, editionName(c.From)+" to "+editionName(c.To))
 	w.blank()
@@ -24,7 +25,7 @@ func TextCompare(c *result.Comparison, o TextOptions) string {
 		}
 	}
 	w.figureChanges(c.Figures)
-	w.move(c.Move)
+	w.move(c.Move, orders)
 	w.rules(c)
 	return w.String()
 }
@@ -117,7 +118,7 @@ func (w *textWriter) rules(c *result.Comparison) {
 }
 
 // move says what moved the number to enrol.
-func (w *textWriter) move(m *result.Move) {
+func (w *textWriter) move(m *result.Move, orders bool) {
 	if m == nil {
 		return
 	}
@@ -135,4 +136,14 @@ func (w *textWriter) move(m *result.Move) {
 		w.line("%10s  %s", change, p.Words)
 	}
 	w.line("            (each averaged over the orders of the three)")
+	if !orders {
+		return
+	}
+	for _, x := range m.Orders {
+		steps := make([]string, len(x.Order))
+		for i, name := range x.Order {
+			steps[i] = name + " " + changeText(x.Changes[i])
+		}
+		w.wrapped("", 12, strings.Join(steps, ", then "))
+	}
 }

@@ -17,7 +17,7 @@ var updateTexts = flag.Bool("update-texts", false, "write the golden terminal te
 // termTexts are all terminal texts of an invented plan.
 func termTexts(p *result.Plan, o TextOptions) map[string]string {
 	r := &result.Reading{Evidence: p.Pool.Evidence, Scale: p.Pool.Scale, Studies: p.Pool.Studies, Findings: p.Findings}
-	return map[string]string{"plan": TextPlan(p, o), "pool": TextPool(p.Pool, o), "read": TextRead(r, o), "size": TextSize(&p.Size, o), "compare": TextCompare(p.Since, o)}
+	return map[string]string{"plan": TextPlan(p, o), "pool": TextPool(p.Pool, o), "read": TextRead(r, o), "size": TextSize(&p.Size, o), "compare": TextCompare(p.Since, true, o)}
 }
 
 func TestTextsMatchTheirGoldenFiles(t *testing.T) {

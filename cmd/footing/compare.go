@@ -12,7 +12,7 @@ import (
 )
 
 func (a *app) compareCommand() *cobra.Command {
-	var oneLine bool
+	var oneLine, orders bool
 	c := &cobra.Command{
 		Use:   "compare PLAN [A [B]]",
 		Short: "What changed between two editions, and whether a revision rule is triggered",
@@ -21,14 +21,15 @@ studies that came, went or changed, options, figures, and the plan's revision ru
 rule is triggered. Given a folder it prints one line for each plan in it that has editions.`,
 		Example: "  footing compare plan.yaml\n  footing compare plan.yaml 1 --line\n  footing compare .",
 		Args:    exactArgs(1, 3, "a plan and up to two edition numbers"),
-		RunE:    func(_ *cobra.Command, args []string) error { return a.compare(args, oneLine) },
+		RunE:    func(_ *cobra.Command, args []string) error { return a.compare(args, oneLine, orders) },
 	}
 	c.Flags().BoolVar(&oneLine, "line", false, "print one line")
+	c.Flags().BoolVar(&orders, "orders", false, "show what moved the number in each order of its parts")
 	a.jsonFlag(c)
 	return c
 }
 
-func (a *app) compare(args []string, oneLine bool) error {
+func (a *app) compare(args []string, oneLine, orders bool) error {
 	if info, err := os.Stat(args[0]); err == nil && info.IsDir() {
 		if len(args) > 1 {
 			return fmt.Errorf("footing compare: a folder is compared with the last editions of its plans; leave out %q", args[1])
@@ -57,7 +58,7 @@ func (a *app) compare(args []string, oneLine bool) error {
 	case oneLine:
 		err = a.print(reports.TermText(cmp.Line) + "\n")
 	default:
-		err = a.print(reports.TextCompare(cmp, a.text()))
+		err = a.print(reports.TextCompare(cmp, orders, a.text()))
 	}
 	if err == nil && cmp.Triggered {
 		return answerNo

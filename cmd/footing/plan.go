@@ -1,6 +1,8 @@
 package main
 
 import (
+	"errors"
+	"fmt"
 	"os"
 	"path/filepath"
 	"strings"
@@ -141,19 +143,35 @@ func render(file *plan.File, p *result.Plan) ([]output, error) {
 			enclosed = append(enclosed, reports.Enclose(file.Evidence.File, data))
 		}
 	}
-	html, err := reports.HTML(p, enclosed...)
-	if err != nil {
-		return nil, &toolFault{err}
-	}
-	book, err := reports.Workbook(p)
-	if err != nil {
+	book := make(chan made, 1)
+	go func() { book <- making(func() ([]byte, error) { return reports.Workbook(p) }) }()
+	html := making(func() ([]byte, error) { return reports.HTML(p, enclosed...) })
+	workbook := <-book
+	if err := errors.Join(html.err, workbook.err); err != nil {
 		return nil, &toolFault{err}
 	}
 	doc, err := marshal(p)
 	if err != nil {
 		return nil, err
 	}
-	return []output{{"report.html", html}, {"workbook.xlsx", book}, {"result.json", doc}, {"protocol.txt", []byte(reports.Protocol(p))}}, nil
+	return []output{{"report.html", html.data}, {"workbook.xlsx", workbook.data}, {"result.json", doc}, {"protocol.txt", []byte(reports.Protocol(p))}}, nil
+}
+
+// made is a file made beside others.
+type made struct {
+	data []byte
+	err  error
+}
+
+// making turns a panic into an error: on another goroutine it would end the process.
+func making(f func() ([]byte, error)) (m made) {
+	defer func() {
+		if r := recover(); r != nil {
+			m = made{err: fmt.Errorf("a fault of the program: %s", firstLine(fmt.Sprint(r)))}
+		}
+	}()
+	data, err := f()
+	return made{data, err}
 }
 
 // editionsOf opens the store of a plan file.
