@@ -14,14 +14,13 @@ func CostFigure(p *result.Plan, o ...FigureOption) Figure {
 	if k == nil {
 		return emptyFigure("cost", title, "the plan gives no costs")
 	}
-	opt := options(o)
-	scale, pens := effectScale{p.Size.Scale}, scenarioPens(p.Range)
 	lo, hi := math.Inf(1), 0.0
 	cover := func(x *float64) {
 		if x != nil && *x > 0 {
 			lo, hi = math.Min(lo, *x), math.Max(hi, *x)
 		}
 	}
+	scale := effectScale{p.Size.Scale}
 	t := Table{Head: []string{"scenario", "effect", "to enrol", "cost", "limit"}, Text: 1}
 	for _, c := range p.Size.Cases {
 		cover(c.Cost)
@@ -38,69 +37,38 @@ func CostFigure(p *result.Plan, o ...FigureOption) Figure {
 		return emptyFigure("cost", title, "no scenario has a size")
 	}
 	cover(k.AtMost)
-	s := scene{W: opt.width()}
-	name, rowH := 250.0, 24.0
-	if opt.narrow {
-		name, rowH = 0, 40
-	}
-	x := axis{Lo: lo / 1.5, Hi: hi * 1.5, A: name + 12, B: s.W - 96, Log: true}
-	top := 26.0
-	bottom := top + rowH*float64(len(p.Size.Cases)) + 4
-	for _, tick := range x.thin(countTicks(x.Lo, x.Hi, 7), 11) {
-		s.add(line(x.at(tick.Value), top-4, x.at(tick.Value), bottom, inkLine, 1), label(x.at(tick.Value), bottom+17, tick.Text, inkSoft, 11).middle())
-	}
-	if k.AtMost != nil {
-		px := x.at(*k.AtMost)
-		s.add(line(px, 20, px, bottom, inkPlan, 1.6))
-		text := "limit " + costText(p, k.AtMost)
-		half := textWidth(text, 12, true) / 2
-		s.add(label(math.Min(math.Max(px, half), s.W-half), 14, text, inkPlan, 12).bold().middle())
+	f := newScenarioRows(p, options(o), lo/1.5, hi*1.5, 96)
+	if k.AtMost != nil && *k.AtMost > 0 {
+		f.mark(*k.AtMost, "limit "+costText(p, k.AtMost), "")
 	}
 	alt := ""
-	for i, c := range p.Size.Cases {
-		y := top + rowH*(float64(i)+0.5)
-		text := scenarioWords(p, c.Scenario) + " " + scale.text(c.Effect)
-		bold := p.Size.Chosen != nil && p.Size.Chosen.Scenario == c.Scenario
-		if opt.narrow {
-			s.add(above(y-8, text, s.W, bold))
-			y += 8
-		} else {
-			s.add(clipped(0, y+4, text, name, inkText, 12, bold))
-		}
-		pn, ok := pens[c.Scenario]
-		if !ok {
-			pn = pen{ink: inkPlan}
-		}
-		alt += costRow(&s, p, c, text, x, y, pn)
+	for i := range p.Size.Cases {
+		alt += f.cost(i)
 	}
 	words := "cost"
 	if k.Currency != "" {
 		words += ", " + clipRunes(k.Currency, 12)
 	}
-	s.add(line(x.A, bottom, x.B, bottom, inkFaint, 1), label(x.B, bottom+33, words, inkSoft, 11).end())
-	s.H = bottom + 38
-	return Figure{Name: "cost", Title: title, Alt: alt, Table: t, scene: s}
+	return Figure{Name: "cost", Title: title, Alt: alt, Table: t, scene: f.finish(words)}
 }
 
-// costRow draws one scenario and says the same in words.
-func costRow(s *scene, p *result.Plan, c result.Case, text string, x axis, y float64, pn pen) string {
-	if c.Cost == nil {
-		s.add(hatch(x.A, y-8, x.B-x.A, 16, 7, inkFaint).faded(0.45))
-		why := "no size exists"
-		w := textWidth(why, 11, false)
-		s.add(rect(x.A+8, y-9, w+10, 18, inkPaper), label(x.A+13, y+4, why, inkSoft, 11))
+// cost draws the cost of one scenario, a ring where it passes the limit, and says it in words.
+func (f *scenarioRows) cost(i int) string {
+	y, pn, text := f.row(i)
+	c := f.p.Size.Cases[i]
+	if c.Cost == nil || *c.Cost <= 0 {
+		f.none(y)
 		return fmt.Sprintf(" %s: no size exists.", text)
 	}
-	value := costText(p, c.Cost)
-	over := p.Size.Study.Cost.AtMost != nil && *c.Cost > *p.Size.Study.Cost.AtMost
-	cx := x.at(*c.Cost)
-	s.add(line(x.A, y, cx, y, pn.ink, 1).faded(0.4))
-	if over {
-		s.add(circle(cx, y, 4.2, inkPaper).outline(pn.ink, 1.8))
+	value := costText(f.p, c.Cost)
+	x := f.x.at(*c.Cost)
+	f.s.add(line(f.x.A, y, x, y, pn.ink, 1).faded(0.4))
+	if limit := f.p.Size.Study.Cost.AtMost; limit != nil && *c.Cost > *limit {
+		f.s.add(circle(x, y, 4.2, inkPaper).outline(pn.ink, 1.8))
 		value += " over"
 	} else {
-		s.add(circle(cx, y, 4.8, pn.ink))
+		f.s.add(circle(x, y, 4.8, pn.ink))
 	}
-	s.add(rect(cx+8, y-7, textWidth(value, 11.5, false)+2, 14, inkPaper).faded(0.85), label(cx+9, y+4, value, inkText, 11.5))
+	f.s.add(rect(x+8, y-7, textWidth(value, 11.5, false)+2, 14, inkPaper).faded(0.85), label(x+9, y+4, value, inkText, 11.5))
 	return fmt.Sprintf(" %s: %s.", text, value)
 }

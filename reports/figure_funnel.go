@@ -47,8 +47,9 @@ var borders = []struct {
 	text string
 }{{1.6448536, "p = .10"}, {1.9599640, "p = .05"}, {2.5758293, "p = .01"}}
 
-func (f *funnel) draw() scene {
-	s := scene{W: f.o.width()}
+// frame is the two axes: every point, and the borders as far down as the least precise study; the standard error runs
+// downwards.
+func (f *funnel) frame(width float64) (x, y axis) {
 	none := f.scale.NoEffect
 	lo, hi, most := none, none, 0.0
 	for _, r := range f.rows {
@@ -63,14 +64,18 @@ func (f *funnel) draw() scene {
 	reach := 1.2 * most
 	lo, hi = math.Min(lo, none-reach), math.Max(hi, none+reach)
 	pad := 0.04 * (hi - lo)
-	left, right := 54.0, s.W-120
+	left, right := 54.0, width-120
 	if f.o.narrow {
-		left, right = 40, s.W-8
+		left, right = 40, width-8
 	}
-	x := axis{Lo: lo - pad, Hi: hi + pad, A: left, B: right}
-	y := axis{Lo: 0, Hi: most, A: 30, B: 270}
+	return axis{Lo: lo - pad, Hi: hi + pad, A: left, B: right}, axis{Lo: 0, Hi: most, A: 30, B: 270}
+}
+
+func (f *funnel) draw() scene {
+	s := scene{W: f.o.width()}
+	x, y := f.frame(s.W)
 	f.zones(&s, x, y)
-	for _, t := range linearTicks(0, most, 5) {
+	for _, t := range linearTicks(0, y.Hi, 5) {
 		ty := y.at(t.Value)
 		s.add(label(x.A-6, ty+4, t.Text, inkSoft, 11).end(), line(x.A, ty, x.A+4, ty, inkFaint, 1))
 	}

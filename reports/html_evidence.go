@@ -145,74 +145,73 @@ func words(token string) string {
 // heterogeneity is the table of how far the studies differ, with the two models.
 func (w writer) heterogeneity() block {
 	pool := w.p.Pool
-	h := pool.Heterogeneity
 	t := &tableView{Caption: "How far the studies differ, and the two models", Head: []string{"figure", "value", "interval", "meaning"}, Text: 1}
-	add := func(name, value, interval, meaning string) {
-		t.Rows = append(t.Rows, tableRow{Cells: []string{name, value, interval, meaning}})
-	}
-	model := func(name string, m result.Pooled, meaning string) {
-		if m.Estimate == nil {
-			if m.Why != "" {
-				add(name, "–", "–", m.Why)
-			}
-			return
-		}
-		interval := "–"
-		if i := m.Interval; i != nil {
-			interval = w.scale.interval(i.Lower, i.Upper)
-		}
-		if m.P != nil {
-			meaning += ", p " + pEquals(*m.P)
-		}
-		add(name, w.scale.text(*m.Estimate), interval, meaning)
-	}
-	model("random effects", pool.Random, "mean of true effects that differ: used in this plan")
-	model("common effect", pool.Common, "one true effect for all, if the studies did not differ")
-	if pool.MantelHaenszel != nil {
-		model("Mantel-Haenszel", *pool.MantelHaenszel, "common effect from the counts")
-	}
-	if pool.Peto != nil {
-		model("Peto", *pool.Peto, "common effect from the counts, for rare events")
-	}
+	w.modelRow(t, "random effects", &pool.Random, "mean of true effects that differ: used in this plan")
+	w.modelRow(t, "common effect", &pool.Common, "one true effect for all, if the studies did not differ")
+	w.modelRow(t, "Mantel-Haenszel", pool.MantelHaenszel, "common effect from the counts")
+	w.modelRow(t, "Peto", pool.Peto, "common effect from the counts, for rare events")
 	if i := pool.Prediction.Interval; i != nil {
-		add("next true effect", "–", w.scale.interval(i.Lower, i.Upper), percentText(i.Level)+" prediction interval: the true effect in a new setting; an observed result scatters wider")
+		t.add("next true effect", "–", w.scale.interval(i.Lower, i.Upper), percentText(i.Level)+" prediction interval: the true effect in a new setting; an observed result scatters wider")
 	} else if pool.Prediction.Why != "" {
-		add("next true effect", "–", "–", pool.Prediction.Why)
+		t.add("next true effect", "–", "–", pool.Prediction.Why)
 	}
-	percentInterval := func(i *result.Interval) string {
-		if i == nil {
-			return "–"
-		}
-		return percentText(i.Lower) + " to " + percentText(i.Upper)
-	}
-	if h.ISquared != nil {
-		add("I²", percentText(*h.ISquared), percentInterval(h.ISquaredInterval), "share of the scatter that is more than chance")
-	}
-	if h.TauSquared != nil {
-		interval := "–"
-		if i := h.TauSquaredInterval; i != nil {
-			interval = fixed(i.Lower, 3) + " to " + fixed(i.Upper, 3)
-		}
-		meaning := "variance of the true effects"
-		if h.Truncated {
-			meaning += ", cut at 0"
-		}
-		add("τ²", fixed(*h.TauSquared, 3), interval, meaning)
-	}
-	if h.Tau != nil {
-		add("τ", fixed(*h.Tau, 2), "–", "standard deviation of the true effects")
-	}
-	if h.Q != nil && h.P != nil {
-		add("Q", fixed(*h.Q, 1), "–", fmt.Sprintf("against %d df, p %s", h.DF, pEquals(*h.P)))
-	}
+	spreadRows(t, pool.Heterogeneity)
 	b := block{Table: t, Class: "last-words"}
 	if pool.K < 10 {
 		b.Margin = []note{{"Few studies", "With fewer than ten, I² and τ² are poorly known: read their intervals."}}
 	}
-	if h.Why != "" {
-		b.Margin = append(b.Margin, note{"", upperFirst(h.Why)})
+	if why := pool.Heterogeneity.Why; why != "" {
+		b.Margin = append(b.Margin, note{"", upperFirst(why)})
 	}
 	return b
+}
+
+// modelRow is one pooled mean, or why there is none.
+func (w writer) modelRow(t *tableView, name string, m *result.Pooled, meaning string) {
+	if m == nil {
+		return
+	}
+	if m.Estimate == nil {
+		if m.Why != "" {
+			t.add(name, "–", "–", m.Why)
+		}
+		return
+	}
+	interval := "–"
+	if i := m.Interval; i != nil {
+		interval = w.scale.interval(i.Lower, i.Upper)
+	}
+	if m.P != nil {
+		meaning += ", p " + pEquals(*m.P)
+	}
+	t.add(name, w.scale.text(*m.Estimate), interval, meaning)
+}
+
+// spreadRows are the measures of how far the studies differ.
+func spreadRows(t *tableView, h result.Heterogeneity) {
+	between := func(i *result.Interval, write func(float64) string) string {
+		if i == nil {
+			return "–"
+		}
+		return write(i.Lower) + " to " + write(i.Upper)
+	}
+	three := func(x float64) string { return fixed(x, 3) }
+	if h.ISquared != nil {
+		t.add("I²", percentText(*h.ISquared), between(h.ISquaredInterval, percentText), "share of the scatter that is more than chance")
+	}
+	if h.TauSquared != nil {
+		meaning := "variance of the true effects"
+		if h.Truncated {
+			meaning += ", cut at 0"
+		}
+		t.add("τ²", three(*h.TauSquared), between(h.TauSquaredInterval, three), meaning)
+	}
+	if h.Tau != nil {
+		t.add("τ", fixed(*h.Tau, 2), "–", "standard deviation of the true effects")
+	}
+	if h.Q != nil && h.P != nil {
+		t.add("Q", fixed(*h.Q, 1), "–", fmt.Sprintf("against %d df, p %s", h.DF, pEquals(*h.P)))
+	}
 }
 
 // pEquals writes "= .043" or "< .001".

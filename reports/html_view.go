@@ -80,6 +80,9 @@ type tableRow struct {
 	Strong bool
 }
 
+// add appends a row.
+func (t *tableView) add(cells ...string) { t.Rows = append(t.Rows, tableRow{Cells: cells}) }
+
 // Left says whether a column holds words.
 func (t *tableView) Left(column int) bool { return column < t.Text }
 
