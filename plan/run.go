@@ -177,7 +177,16 @@ func (s *stages) findings(size *result.Size) []finding.Finding {
 	if s.pool != nil {
 		pool = s.pool.Findings
 	}
-	return mergeFindings(ev, pool, s.built.Findings, size.Findings)
+	return mergeFindings(ev, pool, s.built.Findings, size.Findings, s.shownOnly())
+}
+
+// shownOnly says which given keys are shown but move no figure.
+func (s *stages) shownOnly() []finding.Finding {
+	if s.file.Pool.Relevance == "" || s.ev == nil {
+		return nil
+	}
+	return []finding.Finding{{Severity: finding.Note, Kind: "relevance-not-weighted", Place: s.file.At("pool: relevance"),
+		What: "pool: relevance: the column is shown and can be used in keep where:, but does not weight the studies", Mend: "leave far-off studies out with keep where: [\"relevance >= 0.75\"]"}}
 }
 
 // undecided counts the errors and warnings that nobody has answered.
