@@ -45,7 +45,9 @@ type book struct {
 	err  error
 	made int
 
-	head, wrap, whole, live int // styles
+	title, head, text, wrap int            // styles
+	numbers                 map[string]int // of numbers, by format; the cell keeps every digit, the format rounds what is seen
+	live                    map[string]int // the same in the colour of a live formula
 }
 
 func (b *book) keep(err error) {
@@ -60,12 +62,38 @@ func (b *book) styles() {
 		b.keep(err)
 		return id
 	}
+	const family, size = "Calibri", 11
 	rule := []excelize.Border{{Type: "bottom", Color: "1B2430", Style: 1}}
-	b.head = make(&excelize.Style{Font: &excelize.Font{Bold: true}, Border: rule, Alignment: &excelize.Alignment{WrapText: true, Vertical: "bottom"}})
-	b.wrap = make(&excelize.Style{Alignment: &excelize.Alignment{WrapText: true, Vertical: "top"}})
-	whole := "#,##0"
-	b.whole = make(&excelize.Style{CustomNumFmt: &whole})
-	b.live = make(&excelize.Style{Font: &excelize.Font{Color: "1F5B96"}})
+	b.title = make(&excelize.Style{Font: &excelize.Font{Bold: true, Family: family, Size: 14}})
+	b.head = make(&excelize.Style{Font: &excelize.Font{Bold: true, Family: family, Size: size}, Border: rule, Alignment: &excelize.Alignment{WrapText: true, Vertical: "bottom", Indent: 1}})
+	b.text = make(&excelize.Style{Font: &excelize.Font{Family: family, Size: size}, Alignment: &excelize.Alignment{Vertical: "top", Indent: 1}})
+	b.wrap = make(&excelize.Style{Font: &excelize.Font{Family: family, Size: size}, Alignment: &excelize.Alignment{WrapText: true, Vertical: "top", Indent: 1}})
+	b.numbers, b.live = map[string]int{}, map[string]int{}
+	for _, format := range []string{formatWhole, formatFew, formatLarge, formatTiny} {
+		top := &excelize.Alignment{Vertical: "top"}
+		b.numbers[format] = make(&excelize.Style{CustomNumFmt: &format, Font: &excelize.Font{Family: family, Size: size}, Alignment: top})
+		b.live[format] = make(&excelize.Style{CustomNumFmt: &format, Font: &excelize.Font{Family: family, Size: size, Color: "1F5B96"}, Alignment: top})
+	}
+}
+
+// The formats of numbers as seen.
+const (
+	formatWhole = "0"
+	formatFew   = "0.0000"
+	formatLarge = "#,##0.0"
+	formatTiny  = "0.00E+00"
+)
+
+func formatOf(x float64) string {
+	switch size := math.Abs(x); {
+	case x == math.Trunc(x) && size < 1e15:
+		return formatWhole
+	case size < 1e-3 || size >= 1e15:
+		return formatTiny
+	case size >= 1e4:
+		return formatLarge
+	}
+	return formatFew
 }
 
 // sheet starts a sheet; the first takes the place of the empty one that a new file has.
@@ -82,38 +110,73 @@ func (b *book) sheet(name string, widths ...float64) *bookSheet {
 		b.keep(err)
 		b.keep(b.f.SetColWidth(name, col, col, w))
 	}
-	landscape, fit, zero := "landscape", 1, 0
+	landscape, fit, zero, yes := "landscape", 1, 0, true
 	b.keep(b.f.SetPageLayout(name, &excelize.PageLayoutOptions{Orientation: &landscape, FitToWidth: &fit, FitToHeight: &zero}))
-	return &bookSheet{b: b, name: name}
+	b.keep(b.f.SetSheetProps(name, &excelize.SheetPropsOptions{FitToPage: &yes}))
+	b.keep(b.f.SetHeaderFooter(name, &excelize.HeaderFooterOptions{OddFooter: "&L&A&RPage &P of &N"}))
+	return &bookSheet{b: b, name: name, widths: widths}
 }
 
 // bookSheet is one sheet being written, row by row.
 type bookSheet struct {
-	b    *book
-	name string
-	row  int
+	b      *book
+	name   string
+	row    int
+	widths []float64
+	headed int // row of the first headings, which are frozen; 0 before there are any
 }
 
-// header writes a row of headings and freezes it.
+// width is how many characters a column shows.
+func (s *bookSheet) width(column int) float64 {
+	if column < len(s.widths) {
+		return s.widths[column]
+	}
+	return 8.43 // what a column without a width has
+}
+
+// heading writes a line of large text.
+func (s *bookSheet) heading(text string) {
+	s.line(text)
+	at := fmt.Sprintf("A%d", s.row)
+	s.b.keep(s.b.f.SetCellStyle(s.name, at, at, s.b.title))
+}
+
+// header writes a row of headings, high enough for their words; the first of a sheet is frozen and printed on every page.
 func (s *bookSheet) header(heads ...string) {
 	cells := make([]any, len(heads))
+	lines := 1.0
 	for i, h := range heads {
 		cells[i] = h
+		lines = max(lines, math.Ceil(1.25*float64(len([]rune(h)))/s.width(i)))
 	}
 	s.line(cells...)
 	last, err := excelize.CoordinatesToCellName(len(heads), s.row)
 	s.b.keep(err)
 	s.b.keep(s.b.f.SetCellStyle(s.name, fmt.Sprintf("A%d", s.row), last, s.b.head))
+	s.b.keep(s.b.f.SetRowHeight(s.name, s.row, 15*min(lines, 5)+1))
+	if s.headed > 0 {
+		return
+	}
+	s.headed = s.row
 	s.b.keep(s.b.f.SetPanes(s.name, &excelize.Panes{Freeze: true, YSplit: s.row, TopLeftCell: fmt.Sprintf("A%d", s.row+1), ActivePane: "bottomLeft"}))
+	s.b.keep(s.b.f.SetDefinedName(&excelize.DefinedName{Name: "_xlnm.Print_Titles", RefersTo: fmt.Sprintf("'%s'!$%d:$%d", s.name, s.row, s.row), Scope: s.name}))
 }
 
 // line writes one row: text, whole numbers, numbers with all their digits, nothing for nil.
 func (s *bookSheet) line(cells ...any) {
 	s.row++
+	lines := 1.0
 	for i, c := range cells {
 		at, err := excelize.CoordinatesToCellName(i+1, s.row)
 		s.b.keep(err)
 		s.put(at, c)
+		if text, ok := c.(string); ok && i > 0 && s.width(i) >= wrapFrom && float64(len([]rune(text))) > s.width(i) {
+			s.b.keep(s.b.f.SetCellStyle(s.name, at, at, s.b.wrap))
+			lines = max(lines, math.Ceil(1.1*float64(len([]rune(text)))/s.width(i)))
+		}
+	}
+	if lines > 1 {
+		s.b.keep(s.b.f.SetRowHeight(s.name, s.row, min(15*lines+1, mostRowHeight)))
 	}
 }
 
@@ -123,19 +186,22 @@ func (s *bookSheet) put(at string, c any) {
 	case string:
 		if v != "" {
 			s.b.keep(s.b.f.SetCellStr(s.name, at, sheetText(v)))
+			s.b.keep(s.b.f.SetCellStyle(s.name, at, at, s.b.text))
 		}
 	case bool:
 		word := "no"
 		if v {
 			word = "yes"
 		}
-		s.b.keep(s.b.f.SetCellStr(s.name, at, word))
+		s.put(at, word)
 	case int:
 		s.b.keep(s.b.f.SetCellInt(s.name, at, int64(v)))
+		s.b.keep(s.b.f.SetCellStyle(s.name, at, at, s.b.numbers[formatWhole]))
 	case float64:
 		if !math.IsNaN(v) && !math.IsInf(v, 0) {
 			// SetCellValue would cut the number to 15 digits.
 			s.b.keep(s.b.f.SetCellDefault(s.name, at, strconv.FormatFloat(v, 'g', 17, 64)))
+			s.b.keep(s.b.f.SetCellStyle(s.name, at, at, s.b.numbers[formatOf(v)]))
 		}
 	case *float64:
 		if v != nil {
@@ -147,6 +213,12 @@ func (s *bookSheet) put(at string, c any) {
 		}
 	}
 }
+
+// wrapFrom is the width from which a column holds sentences, which wrap; the first column runs on into its neighbours.
+const wrapFrom = 34
+
+// mostRowHeight is the height that a row can have, in points.
+const mostRowHeight = 409.0
 
 // mostCellText is the longest text that a cell can hold.
 const mostCellText = 32767
@@ -179,5 +251,5 @@ func (b *book) bytes() ([]byte, error) {
 	if err := b.f.Write(&out); err != nil {
 		return nil, fmt.Errorf("reports: workbook: %w", err)
 	}
-	return out.Bytes(), nil
+	return steady(out.Bytes())
 }

@@ -26,7 +26,7 @@ func (b *book) pooling() {
 	rows := studyRows(b.p.Pool)
 	last := firstStudy + len(rows) - 1
 	live := func(value float64, formula string) excelize.Cell {
-		return excelize.Cell{StyleID: b.live, Formula: formula, Value: value}
+		return excelize.Cell{StyleID: b.live[formatOf(value)], Formula: formula, Value: value}
 	}
 	for i, l := range poolingTotals(b.p.Pool, rows, last) {
 		cells := []any{excelize.Cell{Value: l.words}}

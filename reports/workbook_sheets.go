@@ -10,8 +10,8 @@ import (
 // answer is the first sheet: the number and what it rests on.
 func (b *book) answer() {
 	p := b.p
-	s := b.sheet("Answer", 46, 20, 60)
-	s.line(p.Title)
+	s := b.sheet("Answer", 46, 20, 80)
+	s.heading(p.Title)
 	s.line(p.Question)
 	if p.Invented {
 		s.line("Invented data, for demonstration")
@@ -49,12 +49,18 @@ func (b *book) answer() {
 		s.line("people to enrol", "no size", p.Size.Why)
 	}
 	s.row++
+	if len(p.Threats) > 0 {
+		s.header("what could make it wrong", "", "")
+	}
 	for _, t := range p.Threats {
 		s.line(t.Head, nil, t.Text)
 	}
 	s.row++
+	if len(p.Cautions) > 0 {
+		s.header("cautions", "", "")
+	}
 	for _, c := range p.Cautions {
-		s.line(c)
+		s.line(nil, nil, c)
 	}
 }
 
@@ -73,8 +79,10 @@ func bookGroups(p *result.Plan, n result.N) string {
 // data holds every cell as read, under its heading, each row with its number in the evidence sheet.
 func (b *book) data() {
 	pool := b.p.Pool
-	s := b.sheet("Data as read", 8)
-	type column struct{ letters, heading string }
+	type column struct {
+		letters, heading string
+		width            float64
+	}
 	var columns []column
 	at := map[string]int{}
 	for _, st := range pool.Studies {
@@ -82,18 +90,21 @@ func (b *book) data() {
 			letters := strings.TrimRight(c.Address, "0123456789")
 			if _, ok := at[letters]; !ok {
 				at[letters] = len(columns)
-				columns = append(columns, column{letters, c.Heading})
+				columns = append(columns, column{letters, c.Heading, 8})
 			}
+			widest := &columns[at[letters]].width
+			*widest = min(40, max(*widest, 1+float64(len([]rune(c.Text)))))
 		}
 	}
 	sortColumns(columns, func(c column) string { return c.letters })
 	for i, c := range columns {
 		at[c.letters] = i
 	}
-	heads := []string{"row"}
+	heads, widths := []string{"row"}, []float64{8}
 	for _, c := range columns {
-		heads = append(heads, c.letters+": "+c.heading)
+		heads, widths = append(heads, c.letters+": "+c.heading), append(widths, c.width)
 	}
+	s := b.sheet("Data as read", widths...)
 	s.line(fmt.Sprintf("%s, sheet %s, SHA-256 %s", pool.Evidence.File, pool.Evidence.Sheet, pool.Evidence.SHA256))
 	s.header(heads...)
 	for _, st := range pool.Studies {
@@ -195,21 +206,21 @@ func (b *book) small() {
 // sizes is the table of scenarios, then sensitivity and levers.
 func (b *book) sizes() {
 	size := b.p.Size
-	s := b.sheet("Sizes", 30, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 50)
+	s := b.sheet("Sizes", 33, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 12, 50)
 	s.header("scenario", "effect, analysed scale", size.Scale.Words, "n, first group", "n in all", "before rounding", "power attained", "to enrol", "cost", "n at 80%", "n at 90%", "power at the chosen n", "type S", "type M", "why none")
 	for _, c := range size.Cases {
 		s.line(c.Scenario, c.Effect, c.Shown, firstOf(c.N), totalOf(c.N), c.ContinuousN, c.Power, totalOf(c.ToEnrol), c.Cost, totalOf(c.At80), totalOf(c.At90), c.PowerAtChosen, c.TypeS, c.TypeM, c.Why)
 	}
 	if len(size.Sensitivity) > 0 {
 		s.row++
-		s.line("if this assumption is wrong", "value", nil, "n, first group", "n in all", nil, nil, "to enrol", "cost", nil, nil, "power at the chosen n")
+		s.header("if this assumption is wrong", "value", "", "n, first group", "n in all", "", "", "to enrol", "cost", "", "", "power at the chosen n", "", "", "why none")
 		for _, x := range size.Sensitivity {
 			s.line(x.Assumption, x.Value, nil, firstOf(x.N), totalOf(x.N), nil, nil, totalOf(x.ToEnrol), x.Cost, nil, nil, x.PowerAtChosen, nil, nil, x.Why)
 		}
 	}
 	if len(size.Levers) > 0 {
 		s.row++
-		s.line("one thing changed", "change, first group", nil, "n, first group", "n in all", nil, nil, "to enrol", "cost", nil, nil, nil, nil, nil, "what it asks")
+		s.header("one thing changed", "change, first group", "", "n, first group", "n in all", "", "", "to enrol", "cost", "", "", "", "", "", "what it asks")
 		for _, x := range size.Levers {
 			s.line(x.Words, x.Change, nil, firstOf(x.N), totalOf(x.N), nil, nil, totalOf(x.ToEnrol), x.Cost, nil, nil, nil, nil, nil, x.Price+x.Why)
 		}
@@ -233,7 +244,7 @@ func totalOf(n *result.N) any {
 // curvesSheet tabulates power and assurance over n, and the quantiles of the effect.
 func (b *book) curvesSheet() {
 	size := b.p.Size
-	s := b.sheet("Power over n", 12, 12)
+	s := b.sheet("Power over n", 12, 12, 14, 14, 14, 14, 14, 14)
 	heads := []string{"n, first group", "n in all"}
 	for _, c := range size.Curves {
 		heads = append(heads, "power: "+c.Scenario)
@@ -249,6 +260,7 @@ func (b *book) curvesSheet() {
 			}
 			s.line(row...)
 		}
+		s.chart(fmt.Sprintf("Power over the size, alpha %g", size.Study.Alpha), "power", len(heads))
 	}
 	if a := size.Assurance; a != nil && len(a.Curve) > 0 {
 		s = b.sheet("Assurance over n", 14, 12, 14, 14)
@@ -256,6 +268,7 @@ func (b *book) curvesSheet() {
 		for _, pt := range a.Curve {
 			s.line(pt.N, pt.Total, pt.Assurance, pt.Adjusted)
 		}
+		s.chart("Assurance over the size", "assurance", 4)
 	}
 	if r := b.p.Range; r != nil && r.Distribution != nil {
 		s = b.sheet("Effect of the next study", 14, 16, 16)
