@@ -31,17 +31,21 @@ func TestSizeAndSpeed(t *testing.T) {
 	if _, err := HTML(p); err != nil { // templates and fonts are read once
 		t.Fatal(err)
 	}
-	start := time.Now()
-	b, err := HTML(p)
-	took := time.Since(start)
-	if err != nil {
-		t.Fatal(err)
+	took := time.Hour
+	var b []byte
+	for range 7 { // the best of seven: a busy machine is no fault of the report
+		start := time.Now()
+		page, err := HTML(p)
+		if err != nil {
+			t.Fatal(err)
+		}
+		took, b = min(took, time.Since(start)), page
 	}
 	t.Logf("20 studies: %d bytes in %v", len(b), took)
 	if len(b) > 1_000_000 {
 		t.Errorf("%d bytes", len(b))
 	}
-	if took > 400*time.Millisecond { // four times the aim, since a busy machine is slower
+	if took > 200*time.Millisecond { // twice the aim, for slower machines
 		t.Errorf("took %v", took)
 	}
 }
