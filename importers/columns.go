@@ -90,6 +90,9 @@ func checkColumns(g *grid, opt Options) (mapping, error) {
 	sort.Strings(keys)
 	for _, k := range keys {
 		m := strings.ToLower(strings.TrimSpace(k))
+		if parts := Meaning(m).parts(); len(parts) > 1 && !slices.ContainsFunc(parts, func(p Meaning) bool { return !known[string(p)] }) {
+			known[m] = true // "treatment mean + treatment sd": several figures a cell
+		}
 		if !known[m] {
 			if u, ok := understand(k, nil); ok && u.rest == "" {
 				m = string(u.meaning)

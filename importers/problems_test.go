@@ -251,3 +251,20 @@ func TestHostileLabels(t *testing.T) {
 		}
 	}
 }
+
+func TestColumnsOfThePlan(t *testing.T) {
+	p := write(t, "a.csv", []byte("who,Wert X,Wert Y,Z\nA,12.3 (4.5),10 (4),20\nB,11 (4),9 (5),30\n"))
+	s := mustRead(t, p, Options{Columns: map[string]string{"study": "Who", "treatment mean + treatment sd": "wert x", "control mean + control sd": "Wert Y", "Treatment N": "Z"}})
+	if got := figuresOf(s.Records[0]); got["treatment sd"] != 4.5 || got["control mean"] != 10 || got["treatment n"] != 20 || s.Records[1].Study != "B" || s.Headings[1].Why != "by the plan's columns:" {
+		t.Errorf("%v %+v", got, s.Headings)
+	}
+}
+
+func TestOverrides(t *testing.T) {
+	p := write(t, "a.csv", []byte("study,estimate,se\nA,x,0.1\nB,0.2,\n"))
+	s := mustRead(t, p, Options{Overrides: map[string]string{"B2": "0.3", "C3": "0.2", "A3": ""}})
+	a, b := s.Records[0].Reported(), s.Records[1].Reported()
+	if a.Estimate.Value != 0.3 || b.StandardError.Value != 0.2 || s.Records[1].Study != "A" {
+		t.Errorf("%+v %s", s.Records, kindsOf(s.Findings))
+	}
+}
