@@ -21,7 +21,7 @@ func (a *app) addCommand() *cobra.Command {
 	var yes bool
 	c := &cobra.Command{
 		Use:   "add PLAN --from NEW",
-		Short: "Appends new studies to the evidence sheet after showing what they mean",
+		Short: "Appends new studies to the evidence sheet, shown first",
 		Long: `Reads new studies from a spreadsheet of their own, shows how each is understood and the effect that it
 yields, asks, and appends them to the plan's evidence sheet. The sheet keeps its formatting; a copy of it
 as it was stays beside it. A study that is there already is refused. --yes does not ask.`,

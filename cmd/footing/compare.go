@@ -15,7 +15,7 @@ func (a *app) compareCommand() *cobra.Command {
 	var oneLine, orders bool
 	c := &cobra.Command{
 		Use:   "compare PLAN [A [B]]",
-		Short: "What changed between two editions, and whether a revision rule is triggered",
+		Short: "What changed between editions, and whether to revise",
 		Long: `Compares the last edition of a plan with a run now, edition A with a run now, or editions A and B:
 studies that came, went or changed, options, figures, and the plan's revision rules. Exit code 1 when a
 rule is triggered. Given a folder it prints one line for each plan in it that has editions.`,

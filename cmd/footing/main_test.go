@@ -97,6 +97,11 @@ func TestEveryHelpExampleRuns(t *testing.T) {
 		if c.Short == "" || c.Long == "" || c.Example == "" {
 			t.Errorf("footing %s lacks help, a long text or an example", c.Name())
 		}
+		for _, line := range strings.Split(c.Long+"\n"+c.UsageString(), "\n") {
+			if len([]rune(line)) > 80 && !strings.HasPrefix(strings.TrimSpace(line), "footing ") {
+				t.Errorf("footing %s --help: %d columns: %s", c.Name(), len([]rune(line)), line)
+			}
+		}
 		for _, line := range strings.Split(c.Example, "\n") {
 			t.Run(strings.TrimSpace(line), func(t *testing.T) { runExample(t, c, line) })
 		}

@@ -23,11 +23,11 @@ func (a *app) poolCommand() *cobra.Command {
 	var f poolFlags
 	c := &cobra.Command{
 		Use:   "pool SHEET",
-		Short: "Pooled effects, heterogeneity, prediction, small-study checks, a forest plot",
+		Short: "Pooled effects, heterogeneity, prediction, small-study checks",
 		Long: `Pools the studies of an evidence sheet: common effect and random effects under every estimator of
 the spread, prediction, small-study checks and a forest plot in text. Given a plan in place of a sheet,
 the plan's own settings are used.`,
-		Example: "  footing pool evidence.xlsx\n  footing pool evidence.xlsx --heterogeneity restricted-maximum-likelihood --json",
+		Example: "  footing pool evidence.xlsx\n  footing pool evidence.xlsx --heterogeneity paule-mandel --json",
 		Args:    exactArgs(1, 1, "one spreadsheet or plan"),
 		RunE:    func(_ *cobra.Command, args []string) error { return a.pool(args[0], f) },
 	}

@@ -134,11 +134,40 @@ of the tool.`,
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%s: %s; %s --help lists what it takes", c.CommandPath(), firstLine(err.Error()), c.CommandPath())
 	})
-	for _, c := range []*cobra.Command{a.demoCommand(), a.newCommand(), a.readCommand(), a.poolCommand(), a.sizeCommand(), a.planCommand(),
-		a.freezeCommand(), a.compareCommand(), a.addCommand(), a.methodsCommand(), a.qualifyCommand()} {
-		root.AddCommand(c)
+	root.Long = wrapped(root.Long)
+	root.SetUsageTemplate(strings.ReplaceAll(root.UsageTemplate(), ".FlagUsages", ".FlagUsagesWrapped 80"))
+	for _, g := range []struct {
+		title    string
+		commands []*cobra.Command
+	}{
+		{"To start:", []*cobra.Command{a.demoCommand(), a.newCommand()}},
+		{"Looking at evidence and sizes:", []*cobra.Command{a.readCommand(), a.poolCommand(), a.sizeCommand()}},
+		{"The plan:", []*cobra.Command{a.planCommand(), a.freezeCommand(), a.compareCommand(), a.addCommand()}},
+		{"What it rests on:", []*cobra.Command{a.methodsCommand(), a.qualifyCommand()}},
+	} {
+		root.AddGroup(&cobra.Group{ID: g.title, Title: g.title})
+		for _, c := range g.commands {
+			c.GroupID, c.Long = g.title, wrapped(c.Long)
+			root.AddCommand(c)
+		}
 	}
 	return root
+}
+
+// wrapped sets the paragraphs of a help text to the width of a terminal.
+func wrapped(s string) string {
+	var out []string
+	for _, paragraph := range strings.Split(s, "\n\n") {
+		line, lines := "", []string{}
+		for _, word := range strings.Fields(paragraph) {
+			if line != "" && len(line)+1+len(word) > 78 {
+				lines, line = append(lines, line), ""
+			}
+			line = strings.TrimSpace(line + " " + word)
+		}
+		out = append(out, strings.Join(append(lines, line), "\n"))
+	}
+	return strings.Join(out, "\n\n")
 }
 
 // exactArgs asks for between low and high arguments and says which.
