@@ -154,3 +154,15 @@ func reportHeap(b *testing.B, s *Sheet) {
 	runtime.KeepAlive(s)
 	b.StartTimer()
 }
+
+// A sheet too large for memory is unpacked into a temporary file, which must be gone afterwards.
+func TestNoFilesLeft(t *testing.T) {
+	dir := t.TempDir()
+	p := bigWorkbook(t, 40_000)
+	t.Setenv("TMPDIR", dir)
+	s := mustRead(t, p, Options{})
+	left, err := os.ReadDir(dir)
+	if err != nil || len(left) > 0 || len(s.Records) != 40_000 {
+		t.Errorf("%d files left (%v)", len(left), err)
+	}
+}

@@ -133,6 +133,9 @@ func readBytes(path string, data []byte, opt Options) (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
+	if grids.close != nil {
+		defer grids.close()
+	}
 	s, err := choose(path, grids, opt)
 	if err != nil {
 		return nil, err
@@ -146,6 +149,7 @@ type gridSource struct {
 	names   []string
 	visible []bool
 	read    func(i int) (*grid, error)
+	close   func() // frees what reading held open; may be nil
 }
 
 // readGrids opens a file by what its first bytes say, not by its name.

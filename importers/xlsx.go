@@ -41,6 +41,11 @@ func openXLSX(p *parts, data []byte, opt Options) (src *gridSource, err error) {
 		src.visible = append(src.visible, s.state == "" || s.state == "visible")
 	}
 	src.read = func(i int) (*grid, error) { return b.read(i, opt) }
+	src.close = func() { // the library unpacks large sheets into temporary files
+		if b.file != nil {
+			_ = b.file.Close()
+		}
+	}
 	return src, nil
 }
 
