@@ -61,45 +61,30 @@ func (o figureOptions) width() float64 {
 //go:embed templates/*.html templates/*.svg
 var templateFiles embed.FS
 
-// drawing is what the scene template writes: marks, and whether colours are written out (a figure alone) or left to
-// the page's style sheet.
+// drawing is what the scene's template writes.
 type drawing struct {
-	Figure
-	Alone         bool
-	Width, Height float64
-	Items         []element
+	Title, Alt    string
+	Width, Height string
+	Paper         string // alone: the colour under everything
+	Marks         []mark
 }
 
 var svgTemplate = sync.OnceValue(func() *template.Template {
-	return template.Must(template.New("figure").Funcs(sceneFuncs).ParseFS(templateFiles, "templates/scene.svg"))
+	return template.Must(template.New("figure").ParseFS(templateFiles, "templates/scene.svg"))
 })
-
-var sceneFuncs = template.FuncMap{
-	"xy":     coordinate,
-	"clean":  cleanText,
-	"colour": func(i ink) string { return lightInks[i] },
-	"alone":  func(alone bool, e element) loneElement { return loneElement{Alone: alone, element: e} },
-}
-
-// loneElement is an element with the way its colours are written.
-type loneElement struct {
-	element
-	Alone bool
-}
 
 // SVG is the figure as a file of its own: light colours written out, no script, nothing fetched.
 func (f Figure) SVG() ([]byte, error) {
 	var b bytes.Buffer
-	d := drawing{Figure: f, Alone: true, Width: f.scene.W, Height: f.scene.H, Items: f.scene.Items}
-	if err := svgTemplate().ExecuteTemplate(&b, "alone", d); err != nil {
+	if err := svgTemplate().ExecuteTemplate(&b, "alone", f.drawing(true)); err != nil {
 		return nil, err
 	}
 	return b.Bytes(), nil
 }
 
-// inPage is the figure as the page's template draws it.
-func (f Figure) inPage() drawing {
-	return drawing{Figure: f, Width: f.scene.W, Height: f.scene.H, Items: f.scene.Items}
+// drawing writes the figure for the template, alone or for the page.
+func (f Figure) drawing(alone bool) drawing {
+	return drawing{Title: cleanText(f.Title), Alt: cleanText(f.Alt), Width: coordinate(f.scene.W), Height: coordinate(f.scene.H), Paper: lightInks[inkPaper], Marks: marks(f.scene.Items, alone)}
 }
 
 // AltText is the title and the text alternative as one text.

@@ -52,11 +52,9 @@ func HTML(p *result.Plan, o ...HTMLOption) ([]byte, error) {
 }
 
 var pageTemplate = sync.OnceValue(func() *template.Template {
-	t := template.New("page").Funcs(sceneFuncs).Funcs(template.FuncMap{
-		"long":  func(s string) bool { return utf8.RuneCountInString(s) > longText },
-		"clip":  func(s string) string { return clipRunes(s, longText) },
-		"paper": func() string { return lightInks[inkPaper] },
-		"night": func() string { return darkInks[inkPaper] },
+	t := template.New("page").Funcs(template.FuncMap{
+		"long": func(s string) bool { return utf8.RuneCountInString(s) > longText },
+		"clip": func(s string) string { return clipRunes(s, longText) },
 	})
 	return template.Must(t.ParseFS(templateFiles, "templates/*"))
 })

@@ -108,7 +108,7 @@ func pair(wide, narrow Figure) (figurePair, string) {
 	if wide.empty != "" {
 		return figurePair{}, wide.Title + ": not drawn, because " + wide.empty + "."
 	}
-	v := figurePair{Wide: wide.inPage(), Narrow: narrow.inPage()}
+	v := figurePair{Wide: wide.drawing(false), Narrow: narrow.drawing(false)}
 	if len(wide.Table.Rows) > 0 {
 		v.Table = &tableView{Caption: wide.Title, Head: wide.Table.Head, Rows: rows(wide.Table.Rows), Text: wide.Table.Text, Wide: len(wide.Table.Head) > 4}
 	}
