@@ -45,6 +45,7 @@ type evidenceReader struct {
 	sheet      *importers.Sheet
 	conditions []condition
 	scale      effect.Scale
+	wrong      map[string]string // what is wrong with cells that could not be read, by address
 	outcomes   []outcome
 	own        []finding.Finding // of this stage, not of the sheet
 }
@@ -85,7 +86,12 @@ func (r *evidenceReader) pass(overrides map[string]string) error {
 	if err != nil {
 		return err
 	}
-	r.sheet, r.own = s, nil
+	r.sheet, r.own, r.wrong = s, nil, map[string]string{}
+	for _, x := range s.Findings {
+		if _, told := r.wrong[x.Place.Cell]; x.Severity == finding.Error && !told {
+			r.wrong[x.Place.Cell] = x.What
+		}
+	}
 	if r.conditions, err = parseConditions(f, s); err != nil {
 		return err
 	}

@@ -172,6 +172,10 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 	o := outcome{findings: r.locate(rec, got.Findings)}
 	if got.Best == nil {
 		o.why = "no figure in the row leads to an estimate"
+		if wrong := r.wrongCell(rec); wrong != "" {
+			o.why = wrong
+			return o
+		}
 		for _, f := range got.Findings {
 			if f.Severity == finding.Error {
 				o.why = f.What
@@ -187,6 +191,16 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 	}
 	o.estimate = &e
 	return o
+}
+
+// wrongCell is the first cell of the record that could not be read, in words.
+func (r *evidenceReader) wrongCell(rec *importers.Record) string {
+	for _, c := range rec.Cells() {
+		if what, ok := r.wrong[c.Address]; ok {
+			return c.Address + ": " + what
+		}
+	}
+	return ""
 }
 
 // locate gives the findings of the routes their file, sheet, and the text of the cell as typed.

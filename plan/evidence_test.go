@@ -147,6 +147,9 @@ func TestDecisions(t *testing.T) {
 	if decided != 2 || e.Studies[2].Used {
 		t.Errorf("%d decided, %s", decided, findingKinds(e.Findings))
 	}
+	if w := e.Studies[2].Why; !strings.HasPrefix(w, `C4: "x" stands where`) {
+		t.Error(w)
+	}
 	// The study moves to another row: the decision follows it. A changed text: it no longer holds.
 	moved := evidencePlan(t, "study,estimate,standard error\nB,0.1,0.2\nA,about 0.3,0.12\n")
 	moved.Evidence.Decisions = f.Evidence.Decisions[:1]
