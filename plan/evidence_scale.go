@@ -72,7 +72,7 @@ var dataClasses = []dataClass{
 }
 
 // chooseScale takes the plan's scale, else the one that most rows lead to by what they hold; of equals the one that
-// stands first in dataClasses.
+// stands first in dataClasses. A scale on which no row has an estimate gives way to the next.
 func (r *evidenceReader) chooseScale() (effect.Scale, error) {
 	if r.file.Pool.Scale != "" {
 		return parseScale(r.file)
@@ -86,22 +86,44 @@ func (r *evidenceReader) chooseScale() (effect.Scale, error) {
 			}
 		}
 	}
-	best, most := -1, 0
+	var order []int
 	for k, n := range held {
-		if n > most {
-			best, most = k, n
+		if n > 0 {
+			order = append(order, k)
 		}
 	}
-	if best < 0 {
+	if len(order) == 0 {
 		return effect.AsGiven, nil
 	}
-	c := dataClasses[best]
-	scale := c.scale
-	if scale == effect.AsGiven {
-		scale = r.namedScale()
+	slices.SortStableFunc(order, func(a, b int) int { return held[b] - held[a] })
+	best := order[0]
+	for _, k := range order {
+		if r.leads(r.scaleOf(dataClasses[k])) {
+			best = k
+			break
+		}
 	}
-	r.sayScale(c, scale, most)
+	scale := r.scaleOf(dataClasses[best])
+	r.sayScale(dataClasses[best], scale, held[best])
 	return scale, nil
+}
+
+// scaleOf is the scale that a class of figures leads to.
+func (r *evidenceReader) scaleOf(c dataClass) effect.Scale {
+	if c.scale == effect.AsGiven {
+		return r.namedScale()
+	}
+	return c.scale
+}
+
+// leads reports whether any record has an estimate on the scale.
+func (r *evidenceReader) leads(scale effect.Scale) bool {
+	for i := range r.sheet.Records {
+		if effect.Compute("", r.sheet.Records[i].Reported(), effect.Options{Scale: scale}).Best != nil {
+			return true
+		}
+	}
+	return false
 }
 
 // namedScale is the scale that the estimates themselves name, where they agree.
