@@ -121,6 +121,7 @@ func (s *stages) assemble(given *File, size *result.Size, assumptions []result.A
 	p.Findings = s.findings(size)
 	p.Undecided = undecided(p.Findings)
 	p.AnswerNo = answerNo(p)
+	s.withoutEach(p)
 	p.Threats = threats(p)
 	p.Cautions = cautions(p)
 	p.Methods = methodsUsed(p)

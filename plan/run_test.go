@@ -190,3 +190,27 @@ func TestDraftRunsAsItStands(t *testing.T) {
 		t.Errorf("chosen %v of the draft:\n%s", p.Size.Chosen, text)
 	}
 }
+
+// TestThePlanWithoutEachStudy: each row's size is that of a sheet from which the study was taken out by hand.
+func TestThePlanWithoutEachStudy(t *testing.T) {
+	text := strings.Replace(inventedPlan, "size for: smallest-worthwhile", "size for: cautious", 1)
+	text = strings.Replace(text, "control risk: {value: 0.3, low: 0.25, high: 0.35}", "control risk: {pool: control risk}", 1)
+	text = strings.Replace(text, "range: {smallest worthwhile effect: {value: 0.7, source: panel}}\n", "", 1)
+	p := mustRun(t, folder(t, text, inventedCounts))
+	lines := strings.SplitAfter(inventedCounts, "\n")
+	if len(p.Pool.Influence) != 6 {
+		t.Fatalf("%d rows", len(p.Pool.Influence))
+	}
+	differs := false
+	for _, in := range p.Pool.Influence {
+		by := mustRun(t, folder(t, text, strings.Join(lines[:in.Row-1], "")+strings.Join(lines[in.Row:], "")))
+		c := by.Size.Chosen
+		if in.ToEnrol == nil || *in.ToEnrol != c.ToEnrol.Total || in.PerGroup[0] != c.N.Groups[0] || *in.Cost != *c.Cost {
+			t.Errorf("without %s: %v to enrol, by hand %d", in.Study, in.ToEnrol, c.ToEnrol.Total)
+		}
+		differs = differs || c.ToEnrol.Total != p.Size.Chosen.ToEnrol.Total
+	}
+	if !differs {
+		t.Error("no study moves the size: the test can't fail")
+	}
+}
