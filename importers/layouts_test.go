@@ -150,3 +150,63 @@ func TestSecondTable(t *testing.T) {
 	_, err := Read(write(t, "turned.csv", []byte("study,Adams,Brown\nyear,2001,2002\nestimate,0.1,0.2\nse,0.1,0.1\n")), Options{})
 	wantProblem(t, err, "no-headings", "stand in columns")
 }
+
+func TestAmbiguousComma(t *testing.T) {
+	const sheet = "study;n1;mean1;sd1;n2;mean2;sd2\nA;20;1,234;200;20;1,300;210\n"
+	s := readCSVText(t, sheet, Options{})
+	if got := kindsOf(s.Findings); got != "arms-by-number@A1 ambiguous-comma@C2 ambiguous-comma@F2" {
+		t.Error(got)
+	}
+	for decimal, want := range map[string]float64{",": 1.234, ".": 1234} {
+		r := readCSVText(t, sheet, Options{Decimal: decimal}).Records[0].Reported()
+		if r.Treatment.Mean.Value != want {
+			t.Errorf("decimal mark %q: %v", decimal, r.Treatment.Mean)
+		}
+	}
+	// A third cell settles it, and a count proves that the comma is a thousands mark.
+	for _, more := range []string{"B;20;0,5;2;20;1,5;2\n", "B;1,020;5;2;20;1;2\n"} {
+		s := readCSVText(t, sheet+more, Options{})
+		want := 1.234
+		if strings.Contains(more, "1,020") {
+			want = 1234
+		}
+		if r := s.Records[0].Reported(); r.Treatment.Mean.Value != want || strings.Contains(kindsOf(s.Findings), "ambiguous") {
+			t.Errorf("%s: %v %s", more, r.Treatment.Mean, kindsOf(s.Findings))
+		}
+	}
+}
+
+func TestGroupsNamedByThePlan(t *testing.T) {
+	s := readCSVText(t, "study,arm,n,mean,sd\nA,Drug Y,10,5,2\nA,Drug X,11,6,2\nB,Drug X,10,5,2\nB,Drug Y,10,4,2\n", Options{Groups: []string{"drug x", "drug y"}})
+	if got := gist(s); got != "A 0 control mean=5 control n=10 control sd=2 treatment mean=6 treatment n=11 treatment sd=2\nB 0 control mean=4 control n=10 control sd=2 treatment mean=5 treatment n=10 treatment sd=2\n" {
+		t.Error(got, kindsOf(s.Findings))
+	}
+}
+
+func TestPercentFormats(t *testing.T) {
+	f := excelize.NewFile()
+	defer f.Close()
+	style, err := f.NewStyle(&excelize.Style{NumFmt: 9})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for cell, v := range map[string]any{"A1": "study", "B1": "events treatment", "C1": "n treatment", "D1": "risk control", "E1": "n control", "F1": "ci level", "A2": "A", "B2": 0.25, "C2": 40, "D2": 0.3, "E2": 50, "F2": 0.9} {
+		if err := f.SetCellValue("Sheet1", cell, v); err != nil {
+			t.Fatal(err)
+		}
+	}
+	for _, cell := range []string{"B2", "D2", "F2"} {
+		if err := f.SetCellStyle("Sheet1", cell, cell, style); err != nil {
+			t.Fatal(err)
+		}
+	}
+	p := filepath.Join(t.TempDir(), "a.xlsx")
+	if err := f.SaveAs(p); err != nil {
+		t.Fatal(err)
+	}
+	s := mustRead(t, p, Options{})
+	r := s.Records[0].Reported()
+	if r.Treatment.Proportion.Value != 0.25 || r.Treatment.Events.Given || r.Control.Proportion.Value != 0.3 || r.CILevel.Value != 0.9 || len(s.Findings) != 0 {
+		t.Errorf("%+v %s", r, kindsOf(s.Findings))
+	}
+}

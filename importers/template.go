@@ -102,5 +102,5 @@ var explained = map[Meaning]string{
 	"cluster size":            "Mean number of people in a cluster.",
 	"clusters":                "Number of clusters.",
 	"alpha":                   "Cronbach's alpha of the instrument.",
-	"items":                   "Number of items of the instrument.",
+	"items":                   "Number of items of the instrument; with it, means of whole-number answers are checked against n.",
 }
