@@ -7,6 +7,7 @@ import (
 	"path/filepath"
 	"strings"
 	"text/template"
+	"time"
 
 	"footing/importers"
 	"footing/reports"
@@ -64,7 +65,7 @@ they are replaced.`,
 		},
 	}
 	c.Flags().StringVar(&outcome, "outcome", "continuous", "what is measured: continuous or binary")
-	c.Flags().StringVar(&date, "date", "2026-01-01", "date that the plan carries, year-month-day")
+	c.Flags().StringVar(&date, "date", "", "date that the plan carries, year-month-day (today)")
 	c.Flags().BoolVar(&force, "force", false, "write over files that footing did not write or that were changed")
 	return c
 }
@@ -77,6 +78,11 @@ func (a *app) new(dir, outcome, date string, force bool) error {
 			mend = fmt.Sprintf("did you mean %q?", near)
 		}
 		return fmt.Errorf("footing new: there is no start for the outcome %q; %s", outcome, mend)
+	}
+	if date == "" {
+		date = time.Now().Format("2006-01-02")
+	} else if _, err := time.Parse("2006-01-02", date); err != nil {
+		return fmt.Errorf("footing new: --date %s is no date; write year-month-day, such as 2026-11-03", date)
 	}
 	s.Name, s.Evidence, s.Date = "plan.yaml", "evidence.xlsx", date
 	var text bytes.Buffer

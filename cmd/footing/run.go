@@ -143,7 +143,7 @@ of the tool.`,
 		{"To start:", []*cobra.Command{a.demoCommand(), a.newCommand()}},
 		{"Looking at evidence and sizes:", []*cobra.Command{a.readCommand(), a.poolCommand(), a.sizeCommand()}},
 		{"The plan:", []*cobra.Command{a.planCommand(), a.freezeCommand(), a.compareCommand(), a.addCommand()}},
-		{"What it rests on:", []*cobra.Command{a.methodsCommand(), a.qualifyCommand()}},
+		{"What it rests on:", []*cobra.Command{a.checkCommand(), a.methodsCommand(), a.qualifyCommand()}},
 	} {
 		root.AddGroup(&cobra.Group{ID: g.title, Title: g.title})
 		for _, c := range g.commands {
