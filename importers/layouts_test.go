@@ -210,3 +210,10 @@ func TestPercentFormats(t *testing.T) {
 		t.Errorf("%+v %s", r, kindsOf(s.Findings))
 	}
 }
+
+func TestSections(t *testing.T) {
+	s := readCSVText(t, "study,estimate,se\nNights\nA,0.1,0.1\nB,0.2,0.1\nDays,,\nC,0.3,0.1\n", Options{})
+	if len(s.Records) != 3 || s.Records[1].Subgroup != "Nights" || s.Records[2].Subgroup != "Days" || kindsOf(s.Findings) != "row-without-figures@row 2 row-without-figures@row 5" {
+		t.Errorf("%+v %s", s.Records, kindsOf(s.Findings))
+	}
+}

@@ -31,6 +31,7 @@ type recordReader struct {
 
 	scaleIsLog bool
 	told       map[string]int
+	section    string   // label of the last row that was a title
 	above      struct { // the study row read last
 		label string
 		row   int
@@ -236,6 +237,7 @@ func (r *recordReader) read(row *row) (Record, bool) {
 			"put cells with a comma in double quotes")
 		return rec, true
 	}
+	rec.Subgroup = r.section
 	r.rep = effect.Reported{}
 	number := strconv.Itoa(row.n)
 	for i := range row.cells {
@@ -298,6 +300,10 @@ func (r *recordReader) saySkipped(rec *Record, row *row, first string) {
 	sentence := len(first) > 60 || strings.ContainsAny(first, ":*=†") || strings.HasPrefix(lower, "note") || strings.HasPrefix(lower, "source")
 	if rec.Study != "" && !sentence {
 		sev, what = finding.Warning, "the row holds only a label, so it was passed over as the title of a section"
+		if !r.set.has(Subgroup) {
+			r.section = rec.Study
+			what += "; the rows below it have it as their subgroup"
+		}
 	}
 	r.tell(sev, "row-without-figures", &Record{}, row.name(), first, what+fmt.Sprintf(": %q", shorten(first)), "fill in its figures if it is a study")
 }

@@ -2,7 +2,6 @@ package plan
 
 import (
 	"fmt"
-	"path/filepath"
 	"strings"
 
 	"footing/importers"
@@ -60,10 +59,6 @@ type outcome struct {
 // pass reads the sheet, with decided values in place of some cells, and computes every record.
 func (r *evidenceReader) pass(overrides map[string]string) error {
 	f := r.file
-	path := f.Evidence.File
-	if f.Path != "" && !filepath.IsAbs(path) {
-		path = filepath.Join(filepath.Dir(f.Path), path)
-	}
 	opt := importers.Options{SheetName: f.Evidence.Sheet, Columns: f.Evidence.Columns, Groups: f.Study.Groups, Name: f.Evidence.File, Overrides: overrides,
 		Encoding: f.Evidence.Encoding}
 	switch foldWords(f.Evidence.DecimalMark) {
@@ -82,7 +77,7 @@ func (r *evidenceReader) pass(overrides map[string]string) error {
 			opt.Columns[k] = v
 		}
 	}
-	s, err := importers.Read(path, opt)
+	s, err := importers.Read(f.EvidencePath(), opt)
 	if err != nil {
 		return err
 	}
