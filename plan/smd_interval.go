@@ -8,15 +8,19 @@ import (
 )
 
 // exactRoutes are the routes to a standardized mean difference whose figures amount to a two-sample t statistic.
-var exactRoutes = map[string]bool{"means-and-sds": true, "t-statistic": true, "p-value": true}
+var exactRoutes = map[string]bool{"means-and-sds": true, "t-statistic": true, "p-value": true, "f-statistic": true, "point-biserial-r": true}
 
 // smdInterval is the interval of one standardized mean difference by the noncentral t distribution (Steiger & Fouladi
 // 1997; Cumming & Finch 2001): the limits are the effects under which the t statistic found, (g/J) sqrt(n1 n2/(n1+n2)) on
 // n1+n2-2 degrees of freedom, is the upper or the lower (1-level)/2 quantile. ok is false for other routes, unknown group
-// sizes, and where a limit can't be found; the caller then takes the normal interval.
+// sizes, a variance that was adjusted (clusters, reliability), and where a limit can't be found; the caller then takes the
+// normal interval.
 func smdInterval(e *effect.Estimate, level float64) (lower, upper float64, ok bool) {
 	n1, n2 := e.N[0], e.N[1]
 	if e.Scale != effect.StandardizedMeanDifference || !exactRoutes[e.Route] || n1 < 1 || n2 < 1 || n1+n2 < 4 {
+		return 0, 0, false
+	}
+	if plain := (n1+n2)/(n1*n2) + e.Value*e.Value/(2*(n1+n2)); math.Abs(e.Variance-plain) > 1e-9*plain {
 		return 0, 0, false
 	}
 	df, root := n1+n2-2, math.Sqrt(n1*n2/(n1+n2))

@@ -15,7 +15,8 @@ func TestSMDInterval(t *testing.T) {
 		{2, 8, 12, 0.8768475147658213941283496, 3.086684629921181542955948},
 		{-0.5, 20, 20, -1.126661275294288159577578, 0.1330181132288743723555274},
 	} {
-		e := &effect.Estimate{Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: c.d * effect.SmallSampleFactor(c.n1+c.n2-2), N: [2]float64{c.n1, c.n2}}
+		g := c.d * effect.SmallSampleFactor(c.n1+c.n2-2)
+		e := &effect.Estimate{Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: g, Variance: (c.n1+c.n2)/(c.n1*c.n2) + g*g/(2*(c.n1+c.n2)), N: [2]float64{c.n1, c.n2}}
 		lower, upper, ok := smdInterval(e, 0.95)
 		if !ok || math.Abs(lower-c.lower) > 1e-10 || math.Abs(upper-c.upper) > 1e-10 {
 			t.Errorf("d %v: %.15g to %.15g (%v), want %.15g to %.15g", c.d, lower, upper, ok, c.lower, c.upper)
@@ -23,7 +24,8 @@ func TestSMDInterval(t *testing.T) {
 	}
 	for name, e := range map[string]effect.Estimate{"bare": {Scale: effect.StandardizedMeanDifference, Route: "estimate-with-se", Value: 0.5, N: [2]float64{20, 20}},
 		"no sizes": {Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: 0.5}, "other scale": {Scale: effect.MeanDifference, Route: "means-and-sds", Value: 0.5, N: [2]float64{20, 20}},
-		"far": {Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: 1e6, N: [2]float64{20, 20}}} {
+		"adjusted": {Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: 0.5, Variance: 0.2, N: [2]float64{20, 20}},
+		"far":      {Scale: effect.StandardizedMeanDifference, Route: "means-and-sds", Value: 1e6, Variance: 0.1 + 1e12/80, N: [2]float64{20, 20}}} {
 		if _, _, ok := smdInterval(&e, 0.95); ok {
 			t.Errorf("%s: an exact interval", name)
 		}
