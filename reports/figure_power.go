@@ -146,7 +146,11 @@ func (c curveSet) draw() scene {
 	if c.planned > 0 && float64(c.planned) <= most {
 		px := x.at(float64(c.planned))
 		s.add(line(px, y.B-4, px, y.A, inkPlan, 1.2).dash("4 3"))
-		s.add(label(px-6, y.A-6, "planned "+wholeText(c.planned), inkPlan, 12).bold().end())
+		e := label(px-6, y.A-6, "planned "+wholeText(c.planned), inkPlan, 12).bold().end()
+		if w := textWidth(e.Text, 12, true); px-6-w < x.A {
+			e = label(px, y.B-7, e.Text, inkPlan, 12).bold().middle() // no room beside the line: on top of it
+		}
+		s.add(e)
 	}
 	for _, l := range c.lines {
 		ps := make([]point, len(l.points))

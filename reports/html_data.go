@@ -190,7 +190,7 @@ func (w writer) assumptions() block {
 		if a.Why != "" {
 			source += ": " + a.Why
 		}
-		t.Rows = append(t.Rows, tableRow{Cells: []string{a.Name, a.Value, source}, Strong: false})
+		t.Rows = append(t.Rows, tableRow{Cells: []string{a.Name, proseText(shortText(a.Value)), proseText(shortText(source))}})
 	}
 	if len(t.Rows) == 0 {
 		return block{}

@@ -192,6 +192,7 @@ func plural(n int, one, many string) string {
 
 var (
 	proseMinus = regexp.MustCompile(`(^|[\s(\[])-(\.?\d)`)
+	proseTail  = regexp.MustCompile(`\d*\.\d{5,}`)
 	proseLong  = regexp.MustCompile(`(^|[\s(])(\d{5,})\b`)
 )
 
@@ -202,5 +203,17 @@ func proseText(s string) string {
 	return proseLong.ReplaceAllStringFunc(s, func(m string) string {
 		digits := strings.TrimLeft(m, " \t\n(")
 		return m[:len(m)-len(digits)] + groupDigits(digits)
+	})
+}
+
+// shortText cuts the long tails of numbers that a value was printed with: four decimals say enough on a page, and the
+// full precision stands in the JSON and the workbook.
+func shortText(s string) string {
+	return proseTail.ReplaceAllStringFunc(s, func(m string) string {
+		x, err := strconv.ParseFloat(m, 64)
+		if err != nil || x < 0.001 {
+			return m
+		}
+		return strings.TrimPrefix(strconv.FormatFloat(x, 'f', 4, 64), map[bool]string{true: "0", false: ""}[m[0] == '.'])
 	})
 }

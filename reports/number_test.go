@@ -65,6 +65,8 @@ func TestNumbersAtRoundingEdges(t *testing.T) {
 		{chancesText(0.001), "less than 1 chance in 100"},
 		{countWord(11), "Eleven"},
 		{countWord(13), "13"},
+		{shortText("0.2103898843317597 (0.16542 to .2613)"), "0.2104 (0.1654 to .2613)"},
+		{shortText("1.00000e-7 0.00000123"), "1.0000e-7 0.00000123"},
 		{proseText("from -0.10 to 0.83 (-.2), 14458 people in 2024, DL-2"), "from −0.10 to 0.83 (−.2), 14\u202f458 people in 2024, DL-2"},
 	}
 	for i, r := range rows {
