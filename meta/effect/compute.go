@@ -30,6 +30,7 @@ func Compute(study string, r Reported, opt Options) Outcome {
 		}
 		w := &work{r: &r, opt: opt, study: study}
 		rt.compute(w)
+		w.adjust()
 		for _, f := range w.findings {
 			if key := f.Kind + f.Place.Cell; !contains(seen, key) {
 				seen = append(seen, key)
@@ -125,6 +126,7 @@ func roundingOf(name string, r *Reported, opt Options, value float64) float64 {
 		f.Value = keep + math.Pow(10, -float64(f.Decimals))/2
 		w := &work{r: &moved, opt: opt}
 		rt.compute(w)
+		w.adjust()
 		f.Value = keep
 		if w.ok {
 			total += math.Abs(w.value - value)

@@ -18,7 +18,7 @@ func (w *work) printed(f Figure) (value, halfUnit float64, ok bool) {
 	if f.Decimals >= 0 {
 		half = math.Pow(10, -float64(f.Decimals)) / 2
 	}
-	transformed := s.IsLog() || s == FisherZ || s == PartialFisherZ || s == LogitProportion
+	transformed := s.IsLog() || s == FisherZ || s == PartialFisherZ || s == LogitProportion || s == CronbachAlpha
 	if !transformed || w.r.EstimateIsLog {
 		if math.IsNaN(f.Value) || math.IsInf(f.Value, 0) {
 			w.refuse(f, "not-a-number", "the figure is no finite number", "check the cell")
@@ -38,6 +38,8 @@ func (w *work) printed(f Figure) (value, halfUnit float64, ok bool) {
 		half /= f.Value
 	case s == LogitProportion:
 		half /= f.Value * (1 - f.Value)
+	case s == CronbachAlpha:
+		half /= 1 - f.Value
 	default:
 		half /= 1 - f.Value*f.Value
 	}

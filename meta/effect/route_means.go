@@ -35,6 +35,10 @@ func fromMeans(w *work) {
 			w.refuse(a.N, "too-few-people", "two people a group give no small-sample factor", "the row is left out")
 			return
 		}
+		if w.opt.Glass {
+			w.glass(m1, s1, n1, m2, s2, n2)
+			return
+		}
 		s := PooledSD(s1, n1, s2, n2)
 		d := (m1 - m2) / s
 		g, v := w.opt.hedgesG(d, n1, n2)
@@ -55,6 +59,17 @@ func fromMeans(w *work) {
 		}
 		w.give(math.Log(m1)-math.Log(m2), s1*s1/(n1*m1*m1)+s2*s2/(n2*m2*m2), fmt.Sprintf("ln(%s/%s); variance %s^2/(%s %s^2) + %s^2/(%s %s^2)", plain(m1), plain(m2), plain(s1), plain(n1), plain(m1), plain(s2), plain(n2), plain(m2)))
 	}
+}
+
+// glass standardizes by the control group's SD: (m1 - m2)/s2, J with n2 - 1 degrees of freedom, and the variance that allows for unequal SDs: s1^2/(s2^2 n1) + 1/n2 + g^2/(2(n2 - 1)) (Glass 1976; Bonett 2008).
+func (w *work) glass(m1, s1, n1, m2, s2, n2 float64) {
+	if n2 < 3 {
+		w.refuse(w.r.Control.N, "too-few-people", "two people in the control group give no small-sample factor", "the row is left out")
+		return
+	}
+	g := w.opt.smallSample(n2-1) * (m1 - m2) / s2
+	ratio := s1 / s2
+	w.give(g, ratio*ratio/n1+1/n2+g*g/(2*(n2-1)), fmt.Sprintf("(%s - %s)/%s (control group's SD), times J(%s)", plain(m1), plain(m2), plain(s2), plain(n2-1)))
 }
 
 func (a Arm) hasSpread() bool {

@@ -124,7 +124,7 @@ func fromEstimateP(w *work) {
 		return
 	}
 	w.keepPeople()
-	q, law := num.NormalQuantileUpper(p/float64(sides)), "normal"
+	q, law := w.zOfP(p/float64(sides)), "normal"
 	if df := w.n[0] + w.n[1] - 2; w.opt.Scale == MeanDifference && w.n[1] > 0 && df >= 1 {
 		q, law = num.StudentTQuantileUpper(p/float64(sides), df), fmt.Sprintf("t with %s df", plain(df))
 	}
@@ -134,4 +134,12 @@ func fromEstimateP(w *work) {
 	}
 	se := math.Abs(y) / q
 	w.give(y, se*se, w.asPrinted()+fmt.Sprintf("; standard error %s/%s, %s", plain(math.Abs(y)), plain(q), law))
+}
+
+// zOfP is the normal quantile of an upper tail; or the printed closed form -.862 + sqrt(.743 - 2.404 ln P) for a two-sided P (Altman & Bland 2011).
+func (w *work) zOfP(tail float64) float64 {
+	if w.opt.ApproximateP {
+		return -0.862 + math.Sqrt(0.743-2.404*math.Log(2*tail))
+	}
+	return num.NormalQuantileUpper(tail)
 }

@@ -50,6 +50,8 @@ func (s Scale) ToShown(x float64) float64 {
 		return math.Tanh(x)
 	case s == LogitProportion:
 		return 1 / (1 + math.Exp(-x))
+	case s == CronbachAlpha:
+		return -math.Expm1(-x)
 	}
 	return x
 }
@@ -77,6 +79,11 @@ func (s Scale) FromShown(x float64) (float64, error) {
 			return bad("between 0 and 1")
 		}
 		return math.Log(x) - math.Log1p(-x), nil
+	case s == CronbachAlpha:
+		if x >= 1 {
+			return bad("below 1")
+		}
+		return -math.Log1p(-x), nil
 	}
 	return x, nil
 }

@@ -111,7 +111,7 @@ func binomialRecipes() {
 
 func moreDistributionRecipes() {
 	for _, id := range []string{"cohen1988-10", "cohen1988-11"} {
-		add("", func(v published.Value) float64 { return num.NormalCDF(v.Input("d")) }, id)
+		add("", func(v published.Value) float64 { return effect.U3(v.Input("d")) }, id)
 	}
 	add("", func(v published.Value) float64 {
 		n := v.Input("n")
