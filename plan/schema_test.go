@@ -19,7 +19,7 @@ var update = flag.Bool("update", false, "write the generated schemas")
 
 // documents are the types that the commands print.
 var documents = map[string]any{"read": result.Reading{}, "pool": result.Pool{}, "size": result.Size{}, "plan": result.Plan{},
-	"compare": result.Comparison{}, "methods": result.Manual{}, "extractions": result.Extractions{}}
+	"compare": result.Comparison{}, "methods": result.Manual{}, "extractions": result.Extractions{}, "check": result.Check{}}
 
 // schemaOf generates the schema of a document. Pointers, slices and maps may be null, as encoding/json writes them.
 func schemaOf(t *testing.T, name string, v any) []byte {

@@ -15,7 +15,6 @@ import (
 func init() {
 	multiplierRecipes()
 	enrolmentRecipes()
-	handbookRecipes()
 	binomialRecipes()
 	moreDistributionRecipes()
 	moreTrialsRecipes()
@@ -69,25 +68,6 @@ func enrolmentRecipes() {
 	}
 }
 
-// handbookRecipes are worked examples of the Cochrane Handbook: from a p value or an interval back to a standard error or an SD.
-func handbookRecipes() {
-	on := effect.Options{Scale: effect.MeanDifference}
-	add("", func(v published.Value) float64 {
-		return num.StudentTQuantileUpper(v.Input("P")/2, v.Input("n1")+v.Input("n2")-2)
-	}, "cochraneH-05")
-	add("", func(v published.Value) float64 {
-		r := effect.Reported{Estimate: effect.Of(v.Input("MD")), P: effect.Of(v.Input("P")), PSides: 2}
-		r.Treatment.N, r.Control.N = effect.Of(v.Input("n1")), effect.Of(v.Input("n2"))
-		return math.Sqrt(best(r, on).Variance)
-	}, "cochraneH-06")
-	// The SD of one group shows in the variance of the difference between two groups that are the same: 2 SD^2/n.
-	add("", func(v published.Value) float64 {
-		n := v.Input("n")
-		g := effect.Arm{N: effect.Of(n), Mean: effect.Of((v.Input("lower") + v.Input("upper")) / 2), CILower: effect.Of(v.Input("lower")), CIUpper: effect.Of(v.Input("upper"))}
-		return math.Sqrt(best(effect.Reported{Treatment: g, Control: g, CILevel: effect.Of(0.95)}, on).Variance * n / 2)
-	}, "cochraneH-08")
-}
-
 // binomialRecipes are two-stage single-group studies: stop when at most r1 of the first n1 respond.
 func binomialRecipes() {
 	stop := func(v published.Value) float64 {
@@ -110,9 +90,6 @@ func binomialRecipes() {
 }
 
 func moreDistributionRecipes() {
-	for _, id := range []string{"cohen1988-10", "cohen1988-11"} {
-		add("", func(v published.Value) float64 { return effect.U3(v.Input("d")) }, id)
-	}
 	add("", func(v published.Value) float64 {
 		n := v.Input("n")
 		return num.NormalQuantileUpper((1-v.Input("coverage"))/2) * math.Sqrt((n-1)*(1+1/n)/num.ChiSquaredQuantile(1-v.Input("confidence"), n-1))

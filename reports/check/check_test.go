@@ -1,0 +1,158 @@
+package check
+
+import (
+	"bytes"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+
+	"footing/plan"
+	"footing/plan/result"
+	"footing/reports"
+)
+
+const sheet = `study,year,n treatment,mean treatment,sd treatment,n control,mean control,sd control
+A,2004,30,12.1,4.0,31,10.2,4.2
+B,2008,45,11.8,3.9,44,10.9,4.1
+C,2011,60,12.6,4.4,58,10.8,4.3
+D,2016,25,11.1,4.1,27,10.6,3.8
+E,2019,80,12.0,4.2,79,10.9,4.0
+`
+
+const planText = `title: Trial plan
+date: 2026-11-03
+evidence: {file: EVIDENCE, higher is better: true}
+range:
+  smallest worthwhile effect: {value: 0.2, source: panel, who: board}
+target: {power: 0.8, size for: smallest-worthwhile}
+`
+
+// written is a report with the plan and the evidence in it, as the command writes it.
+func written(t *testing.T, evidence string) []byte {
+	t.Helper()
+	dir := t.TempDir()
+	text := []byte(strings.Replace(planText, "EVIDENCE", evidence, 1))
+	for name, data := range map[string][]byte{"plan.yaml": text, "evidence.csv": []byte(sheet)} {
+		if err := os.WriteFile(filepath.Join(dir, name), data, 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	f, err := plan.Load(filepath.Join(dir, "plan.yaml"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	f.Evidence.File = "evidence.csv"
+	p, err := plan.Run(f)
+	if err != nil {
+		t.Fatal(err)
+	}
+	page, err := reports.HTML(p, reports.Enclose("plan.yaml", text), reports.Enclose(evidence, []byte(sheet)))
+	if err != nil {
+		t.Fatal(err)
+	}
+	return page
+}
+
+func checked(t *testing.T, page []byte) *result.Check {
+	t.Helper()
+	c, err := Report("report.html", page)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return c
+}
+
+func TestEveryPrintedNumberComesOutAgain(t *testing.T) {
+	c := checked(t, written(t, "evidence.csv"))
+	if c.Numbers < 300 || c.Reproduced != c.Numbers || len(c.Differs) > 0 {
+		t.Errorf("%d of %d reproduced: %+v", c.Reproduced, c.Numbers, c.Differs)
+	}
+	if c.Plan.Name != "plan.yaml" || c.Evidence == nil || c.Evidence.Name != "evidence.csv" || len(c.Evidence.SHA256) != 64 {
+		t.Errorf("%+v %+v", c.Plan, c.Evidence)
+	}
+}
+
+// One digit of one number changed by hand is found, wherever it stands.
+func TestAChangedDigitIsFound(t *testing.T) {
+	page := written(t, "evidence.csv")
+	numbers, err := reports.PrintedNumbers(page)
+	if err != nil {
+		t.Fatal(err)
+	}
+	tried := 0
+	for i := 0; i < len(numbers); i += len(numbers)/25 + 1 {
+		n := numbers[i]
+		if len(n.Text) < 3 {
+			continue
+		}
+		last := n.Text[len(n.Text)-1]
+		if last < '0' || last > '9' {
+			continue
+		}
+		forged := n.Text[:len(n.Text)-1] + string('0'+(last-'0'+1)%10)
+		body := bytes.Index(page, []byte("<body"))
+		at := bytes.Index(page[body:], []byte(">"+n.Text+"<"))
+		if at < 0 {
+			continue
+		}
+		changed := append([]byte{}, page...)
+		copy(changed[body+at+1:], forged)
+		if c := checked(t, changed); len(c.Differs) == 0 || c.Reproduced == c.Numbers {
+			t.Errorf("%q under %q changed to %q: not found", n.Text, n.Label, forged)
+		}
+		tried++
+	}
+	if tried < 5 {
+		t.Errorf("only %d numbers were changed", tried)
+	}
+}
+
+func TestEnclosedFilesThatWereChangedAreRefused(t *testing.T) {
+	page := written(t, "evidence.csv")
+	at := bytes.Index(page, []byte(`"data":"`))
+	if at < 0 {
+		at = bytes.Index(page, []byte(`class="enclosed"`)) + 60
+	}
+	changed := append([]byte{}, page...)
+	if changed[at+20] == 'A' {
+		changed[at+20] = 'B'
+	} else {
+		changed[at+20] = 'A'
+	}
+	if _, err := Report("report.html", changed); err == nil {
+		t.Error("a changed file was taken")
+	}
+	for _, bad := range []string{"", "<p>no report</p>"} {
+		if _, err := Report("report.html", []byte(bad)); err == nil || !strings.Contains(err.Error(), "carries no plan") {
+			t.Errorf("%q: %v", bad, err)
+		}
+	}
+}
+
+// A plan reaches no file outside the report, whatever path it names.
+func TestAPlanReachesNothingOutside(t *testing.T) {
+	secret := filepath.Join(t.TempDir(), "secret.csv")
+	if err := os.WriteFile(secret, []byte("study,estimate,standard error\nX,9,1\nY,9,1\nZ,9,1\n"), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	for _, name := range []string{"../../evidence.csv", secret, `..\evidence.csv`} {
+		c := checked(t, written(t, filepath.ToSlash(name)))
+		if c.Numbers < 300 {
+			t.Errorf("%s: %d numbers", name, c.Numbers)
+		}
+		for _, d := range c.Differs {
+			if strings.HasPrefix(d.Computed, "9") {
+				t.Errorf("%s: %+v", name, d)
+			}
+		}
+	}
+}
+
+func TestSafeName(t *testing.T) {
+	for given, want := range map[string]string{"a/b.csv": "b.csv", `..\x.csv`: "x.csv", "..": "f", ".": "f", "/": "f", "": "f", ".hidden": "f", "a\x00b": "f", "plan.yaml": "plan.yaml"} {
+		if got := safeName(given, "f"); got != want {
+			t.Errorf("%q: %q", given, got)
+		}
+	}
+}
