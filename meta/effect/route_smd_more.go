@@ -118,7 +118,7 @@ func fromDifference(w *work) {
 		q := num.StudentTQuantileUpper((1-w.level())/2, df)
 		se = (r.DifferenceUpper.Value - r.DifferenceLower.Value) / (2 * q)
 		how = fmt.Sprintf("standard error %s from the interval, t with %s df", plain(se), plain(df))
-	case r.DifferenceSD.Given && r.PrePostR.Given == false && r.Treatment.PreMean.Given == false:
+	case r.DifferenceSD.Given && r.Treatment.N.Given && r.Control.N.Given && !r.PrePostR.Given: // without two groups it is the SD of differences within pairs
 		if !w.need(r.DifferenceSD) {
 			return
 		}
