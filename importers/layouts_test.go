@@ -217,3 +217,10 @@ func TestSections(t *testing.T) {
 		t.Errorf("%+v %s", s.Records, kindsOf(s.Findings))
 	}
 }
+
+func TestLogRankVariance(t *testing.T) {
+	r := readCSVText(t, "study,O-E,V\nA,-5.2,20.5\n", Options{}).Records[0].Reported()
+	if r.ObservedMinusExpected.Value != -5.2 || r.LogRankVariance.Value != 20.5 || r.Variance.Given {
+		t.Errorf("%+v", r)
+	}
+}

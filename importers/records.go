@@ -327,6 +327,9 @@ func (r *recordReader) placeOf(m Meaning) int {
 
 // target is the meaning of the place where a figure of meaning m goes.
 func (s *columnSet) target(m Meaning, single bool) Meaning {
+	if m == Variance && !s.has(Estimate) && s.has("observed minus expected") {
+		return "log-rank variance"
+	}
 	if !s.has(Estimate) {
 		switch diff, mean := s.has("mean difference"), s.has("mean"); {
 		case m == StandardError && diff:

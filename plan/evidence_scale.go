@@ -187,7 +187,12 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 	if h := r.file.Evidence.HigherBetter; h != nil {
 		opt.LowerBetter = !*h
 	}
-	got := effect.Compute(rec.Study, rec.Reported(), opt)
+	rep := rec.Reported()
+	got := effect.Compute(rec.Study, rep, opt)
+	change := got.Best == nil && changeScores(&rep)
+	if change {
+		got = effect.Compute(rec.Study, rep, opt)
+	}
 	if got.Best != nil { // a p or F without a sign is no fault where other figures give the effect
 		got.Findings = slices.DeleteFunc(got.Findings, func(f finding.Finding) bool { return strings.HasSuffix(f.Kind, "-without-direction") })
 	}
@@ -207,12 +212,28 @@ func (r *evidenceReader) compute(rec *importers.Record) outcome {
 		return o
 	}
 	e := *got.Best
+	if change {
+		e.Notes = append(slices.Clone(e.Notes), "change scores stand in place of final values")
+	}
 	if rec.HigherBetter != nil && *rec.HigherBetter == opt.LowerBetter {
 		e.Value, e.Flipped = -e.Value, true
 		e.Formula += "; the sign is turned, since the row's outcome runs the other way"
 	}
 	o.estimate = &e
 	return o
+}
+
+// changeScores puts the means and SDs of change in place of final values that are not reported (Cochrane Handbook
+// 10.5.2); checkChangeScores says when both are pooled.
+func changeScores(rep *effect.Reported) bool {
+	done := false
+	for _, a := range []*effect.Arm{&rep.Treatment, &rep.Control} {
+		if !a.Mean.Given && a.ChangeMean.Given {
+			a.Mean, a.SD, a.SE, a.CILower, a.CIUpper = a.ChangeMean, a.ChangeSD, effect.Figure{}, effect.Figure{}, effect.Figure{}
+			done = true
+		}
+	}
+	return done
 }
 
 // wrongCell is the first cell of the record that could not be read, in words.

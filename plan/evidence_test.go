@@ -235,3 +235,16 @@ func TestChecksAcrossEstimates(t *testing.T) {
 		}
 	}
 }
+
+func TestChangeScores(t *testing.T) {
+	f := evidencePlan(t, "study,mean treatment,sd treatment,mean change treatment,sd change treatment,n treatment,mean control,sd control,mean change control,sd change control,n control\nA,11,2,,,20,10,2,,,20\nB,,,5,3,20,,,4,3,20\nC,12,2,,,20,10,2,,,20\n")
+	f.Pool.Scale = "mean-difference"
+	e := mustReadEvidence(t, f)
+	if b := e.Studies[1]; !b.Used || *b.Estimate != 1 || !strings.Contains(strings.Join(b.Notes, " "), "change scores") || strings.Contains(findingKinds(e.Findings), "change-among-final-scores") {
+		t.Errorf("%+v %s", b, findingKinds(e.Findings))
+	}
+	f.Pool.Scale = "standardized-mean-difference"
+	if got := findingKinds(mustReadEvidence(t, f).Findings); !strings.Contains(got, "change-among-final-scores@D3") {
+		t.Error(got)
+	}
+}
