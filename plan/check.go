@@ -246,7 +246,7 @@ func parseAllocation(text string) (treatment, control float64, ok bool) {
 	}
 	x, err1 := strconv.ParseFloat(strings.TrimSpace(a), 64)
 	y, err2 := strconv.ParseFloat(strings.TrimSpace(b), 64)
-	if err1 != nil || err2 != nil || !(x > 0 && y > 0) || x > 1e6 || y > 1e6 {
+	if err1 != nil || err2 != nil || !(x > 0 && y > 0) || x > 1000 || y > 1000 {
 		return 0, 0, false
 	}
 	return x, y, true

@@ -12,6 +12,16 @@ func tailAlpha(sides int, alpha float64) float64 { return alpha / float64(sides)
 // rejectT is the chance of a noncentral t beyond the critical value on either side.
 func rejectT(critical, df, delta float64, sides int) Rejections {
 	r := Rejections{OneSided: sides == 1}
+	// An estimate this far out falls short of the critical value only if the SD comes out a hundred times too large: with one degree of freedom, the worst case, a
+	// chance below 1e-2000.
+	if a := math.Abs(delta); a > 1e4 && a > 100*critical {
+		if delta > 0 {
+			r.Above = 1
+		} else {
+			r.Below = 1
+		}
+		return r
+	}
 	// Beyond 9 on the far side the other direction has a chance below 1e-18.
 	if delta > -9 {
 		r.Above = num.NoncentralTSurvival(critical, df, delta)
@@ -137,6 +147,7 @@ func (t zTest) Power(effect float64, n int) Rejections {
 	return rejectZ(num.NormalQuantileUpper(tailAlpha(t.s.Sides, t.s.Alpha)), effect/t.se(float64(g[0]), float64(g[len(g)-1])), t.s.Sides)
 }
 func rejectZ(critical, shift float64, sides int) Rejections {
+	shift = math.Max(-1e8, math.Min(1e8, shift)) // beyond, the chances are 1 and 0 to every digit
 	return Rejections{Above: num.NormalSurvival(critical - shift), Below: num.NormalCDF(-critical - shift), OneSided: sides == 1}
 }
 func (t zTest) Continuous(effect, n float64) (Rejections, bool) {

@@ -49,6 +49,9 @@ func SizeFor(d Design, effect, target float64) (Sized, error) {
 		return Sized{}, fmt.Errorf("no size up to %d in the first group reaches a power of %g", MaxN, target)
 	}
 	out := Sized{N: n, Groups: d.Groups(n), Power: d.Power(effect, n), Continuous: math.NaN()}
+	if guess < 1e-3 { // so large an effect that the least study is far too large: there is no size before rounding to speak of
+		return out, nil
+	}
 	if c, ok := continuousN(d, effect, target, n); ok {
 		out.Continuous = c
 	}

@@ -137,6 +137,11 @@ func (s Study) Resolve() (Design, error) {
 	if s.Aim != "superiority" {
 		return nil, fmt.Errorf("the aim %q is not offered; superiority is", s.Aim)
 	}
+	switch s.Arrangement {
+	case Parallel, SingleGroup, Paired:
+	default:
+		return nil, fmt.Errorf("the arrangement %q is not offered; parallel, paired and single-group are", s.Arrangement)
+	}
 	for _, o := range offers {
 		if o.fits(s) {
 			return o.make(s)

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"io"
 	"os"
 	"path/filepath"
 	"strings"
@@ -87,6 +88,11 @@ func looksLikePlan(path string) bool {
 	case ".yaml", ".yml":
 		return true
 	}
-	data, err := os.ReadFile(path)
-	return err == nil && len(data) < 1<<20 && strings.Contains(string(data), "evidence:")
+	f, err := os.Open(path)
+	if err != nil {
+		return false
+	}
+	defer f.Close()
+	data, err := io.ReadAll(io.LimitReader(f, 1<<20))
+	return err == nil && strings.Contains(string(data), "evidence:")
 }
