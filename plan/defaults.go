@@ -94,6 +94,9 @@ func (f *File) stated() []result.Assumption {
 		name string
 		a    *Assumed
 	}{
+		{"evidence: pre-post correlation", f.Evidence.PrePostR},
+		{"evidence: intracluster correlation", f.Evidence.ICC},
+		{"evidence: reliability", f.Evidence.Reliability},
 		{"range: smallest worthwhile effect", f.Range.SmallestWorthwhile},
 		{"study: standard deviation", f.Study.SD},
 		{"study: control risk", f.Study.ControlRisk},

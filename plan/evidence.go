@@ -44,6 +44,7 @@ type evidenceReader struct {
 	sheet      *importers.Sheet
 	conditions []condition
 	scale      effect.Scale
+	options    effect.Options    // all but the scale
 	wrong      map[string]string // what is wrong with cells that could not be read, by address
 	outcomes   []outcome
 	own        []finding.Finding // of this stage, not of the sheet
@@ -91,6 +92,9 @@ func (r *evidenceReader) pass(overrides map[string]string) error {
 		return err
 	}
 	if err := r.checkSubgroup(); err != nil {
+		return err
+	}
+	if r.options, err = f.effectOptions(); err != nil {
 		return err
 	}
 	if r.scale, err = r.chooseScale(); err != nil {

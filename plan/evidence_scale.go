@@ -119,7 +119,9 @@ func (r *evidenceReader) scaleOf(c dataClass) effect.Scale {
 // leads reports whether any record has an estimate on the scale.
 func (r *evidenceReader) leads(scale effect.Scale) bool {
 	for i := range r.sheet.Records {
-		if effect.Compute("", r.sheet.Records[i].Reported(), effect.Options{Scale: scale}).Best != nil {
+		opt := r.options
+		opt.Scale = scale
+		if effect.Compute("", r.sheet.Records[i].Reported(), opt).Best != nil {
 			return true
 		}
 	}
@@ -183,10 +185,8 @@ func (r *evidenceReader) fillEstimate(st *result.Study, e *effect.Estimate) {
 
 // compute turns one record into an estimate.
 func (r *evidenceReader) compute(rec *importers.Record) outcome {
-	opt := effect.Options{Scale: r.scale}
-	if h := r.file.Evidence.HigherBetter; h != nil {
-		opt.LowerBetter = !*h
-	}
+	opt := r.options
+	opt.Scale = r.scale
 	rep := rec.Reported()
 	got := effect.Compute(rec.Study, rep, opt)
 	change := got.Best == nil && changeScores(&rep)

@@ -248,3 +248,24 @@ func TestChangeScores(t *testing.T) {
 		t.Error(got)
 	}
 }
+
+func TestOptionsOfTheRoutes(t *testing.T) {
+	const sheet = "study,mean treatment,sd treatment,n treatment,mean control,sd control,n control,cluster size\nA,11,2,20,10,2,20,5\nB,12,2,30,10,2,30,\n"
+	f := evidencePlan(t, sheet)
+	plain := mustReadEvidence(t, f)
+	f.Evidence.ICC, f.Pool.Variance = &Assumed{Value: 0.05}, "unbiased"
+	changed := mustReadEvidence(t, f)
+	// The design effect of clusters of 5 is 1 + 4 x 0.05 = 1.2 (Cochrane Handbook 23.1.4).
+	if a, b := *plain.Studies[0].Variance, *changed.Studies[0].Variance; !(b > 1.1*a) {
+		t.Errorf("clusters: %v and %v", a, b)
+	}
+	// Unbiased (Hedges 1983): 1/15 + [1 - 56/(58 J(58)^2)] g^2, g = J(58), J(58) = 0.98700358102797740142 (mpmath).
+	if got, want := *changed.Studies[1].Variance, 2.0/30+(1-56/(58*0.98700358102797740142*0.98700358102797740142))*0.98700358102797740142*0.98700358102797740142; math.Abs(got-want) > 1e-12 {
+		t.Errorf("unbiased: %v, want %v", got, want)
+	}
+	f.Evidence.ICC, f.Evidence.Reliability, f.Pool.Variance = &Assumed{Value: 2}, &Assumed{Value: -1}, "best"
+	var ps finding.Problems
+	if _, err := ReadEvidence(f); !errors.As(err, &ps) || len(ps) != 3 {
+		t.Error(err)
+	}
+}

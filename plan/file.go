@@ -33,7 +33,10 @@ type Evidence struct {
 	Encoding     string            `yaml:"encoding"`     // of a text file, where it isn't found out: utf-8, windows-1252, ...
 	DecimalMark  string            `yaml:"decimal mark"` // "." or ",", where it isn't found out
 	HigherBetter *bool             `yaml:"higher is better"`
-	Favours      string            `yaml:"favours"` // the direction in the reader's words: "better with a break"
+	PrePostR     *Assumed          `yaml:"pre-post correlation"`     // for rows of paired measurements that give none
+	ICC          *Assumed          `yaml:"intracluster correlation"` // for clustered rows that give none
+	Reliability  *Assumed          `yaml:"reliability"`              // of the outcome measure: effects are corrected for attenuation
+	Favours      string            `yaml:"favours"`                  // the direction in the reader's words: "better with a break"
 	KeepWhere    []string          `yaml:"keep where"`
 	Searched     *Searched         `yaml:"searched"`
 	Decisions    []Decision        `yaml:"decisions"`
@@ -66,6 +69,7 @@ type Pool struct {
 	Heterogeneity string   `yaml:"heterogeneity"` // default dersimonian-laird
 	Interval      string   `yaml:"interval"`      // default hartung-knapp-floored
 	Level         *float64 `yaml:"level"`         // default .95
+	Variance      string   `yaml:"variance"`      // of a standardized mean difference: at-g (default), j-squared, unbiased
 	Relevance     string   `yaml:"relevance"`     // heading of the relevance column
 	SubgroupBy    string   `yaml:"subgroup by"`
 }
