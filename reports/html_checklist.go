@@ -19,7 +19,7 @@ func (w writer) checklist(sections []section) *section {
 	items := w.askedItems()
 	titles := map[string]string{"answer": "the answer"}
 	for _, s := range sections {
-		titles[s.ID] = s.Number + " " + s.Title
+		titles[s.ID] = "‘" + s.Title + "’"
 	}
 	t := &tableView{Caption: "Item by item", Head: []string{"no.", "what is asked", "by", "where"}, Text: 4, Wide: true}
 	here, missing, not := 0, 0, 0

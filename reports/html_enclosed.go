@@ -67,7 +67,7 @@ var (
 )
 
 // PrintedNumbers lists every number of a report in the order of the page, those inside drawings included (once: the
-// drawings for telephones repeat them and are left out). Two reports of one result have the same list.
+// drawings for telephones repeat them and are left out, and so are the numbers of sections). Two reports of one result have the same list.
 func PrintedNumbers(page []byte) ([]PrintedNumber, error) {
 	text := doctype.ReplaceAll(scripts.ReplaceAll(page, nil), nil)
 	d := xml.NewDecoder(bytes.NewReader(text))
@@ -117,8 +117,12 @@ func (r *pageReader) start(e xml.StartElement) {
 	switch e.Name.Local {
 	case "tr":
 		r.row = ""
-	case "title": // names of cut labels repeat what stands beside them
+	case "title", "nav": // names of cut labels and of sections repeat what stands elsewhere
 		if r.skip == 0 {
+			r.skip = len(r.open)
+		}
+	case "span": // a section's own number is no figure
+		if r.skip == 0 && len(r.open) > 1 && r.open[len(r.open)-2] == "h2" {
 			r.skip = len(r.open)
 		}
 	}

@@ -7,13 +7,16 @@ import (
 	"footing/reports"
 )
 
-var sinceSection = regexp.MustCompile(`^Since edition \d+$`)
+var (
+	sinceSection = regexp.MustCompile(`^Since edition \d+$`)
+	sinceLine    = regexp.MustCompile(`^Since edition \d+`) // the line of the answer that tells what changed
+)
 
 // setAside takes out what can't be computed from the report: the comparison with earlier editions. With a check it is listed there.
 func setAside(out *result.Check, numbers []reports.PrintedNumber) []reports.PrintedNumber {
 	var keep []reports.PrintedNumber
 	for _, n := range numbers {
-		if !sinceSection.MatchString(n.Section) && !(n.Section == "" && editionWords.MatchString(n.Label)) {
+		if !sinceSection.MatchString(n.Section) && !sinceLine.MatchString(n.Label) && !(n.Section == "" && editionWords.MatchString(n.Label)) {
 			keep = append(keep, n)
 			continue
 		}
