@@ -116,6 +116,9 @@ func (c *checker) evidence() {
 				"add evidence: {file: ..}, or range: {smallest worthwhile effect: ..}")
 		}
 	}
+	c.assumed("evidence: pre-post correlation", e.PrePostR, above(-1), below(1))
+	c.assumed("evidence: intracluster correlation", e.ICC, from(0), below(1))
+	c.assumed("evidence: reliability", e.Reliability, above(0), from(1))
 	for i, d := range e.Decisions {
 		path := fmt.Sprintf("evidence: decisions: %d", i+1)
 		if strings.TrimSpace(d.Finding) == "" {

@@ -142,7 +142,7 @@ func (w *textWriter) scenarios(p *result.Plan) {
 	} else {
 		unit = "people"
 	}
-	cols := []textColumn{{head: "scenario", most: 26}, {head: "effect", right: true}, {head: unit, right: true}, {head: "to enrol", right: true}, {head: "power at " + TermText(n), right: true}}
+	cols := []textColumn{{head: "scenario", most: 26}, {head: "effect", right: true, most: 14}, {head: unit, right: true}, {head: "to enrol", right: true}, {head: "power at " + TermText(n), right: true}}
 	var rows [][]string
 	var marks, inks []string
 	for _, c := range s.Cases {
