@@ -73,7 +73,7 @@ func (b barPlot) measure() (name, rowH, detail float64) {
 		name = math.Max(name, textWidth(r.name, 12, false))
 	}
 	if b.detail != "" {
-		rowH = 27
+		rowH = 30
 		for _, r := range b.rows {
 			detail = math.Max(detail, textWidth(r.detail, 11, false))
 		}

@@ -56,7 +56,7 @@ func (r rowPlot) measure() (name, rowH float64) {
 		rowH = 17
 	}
 	if name > mostName {
-		rowH = 30
+		rowH = 35
 	}
 	return math.Min(name, mostName), rowH
 }

@@ -48,7 +48,7 @@ func (w writer) evidence() *section {
 		s.Blocks = append(s.Blocks, *left)
 	}
 	if len(pool.Influence) > 0 {
-		b := w.figure(InfluenceFigure, note{"Leaving out", "Each study in turn, everything else as planned. Where a study moves the plan, look at its row first."})
+		b := w.figure(InfluenceFigure, w.influenceNote())
 		b.Heading = "The plan without each study"
 		s.Blocks = append(s.Blocks, b)
 	}
@@ -56,6 +56,29 @@ func (w writer) evidence() *section {
 		s.Blocks = append(s.Blocks, w.estimators())
 	}
 	return s
+}
+
+// influenceNote is the margin of the plan without each study: whether the number moves at all, and why not.
+func (w writer) influenceNote() note {
+	lo, hi := 0, 0
+	for _, in := range w.p.Pool.Influence {
+		if in.ToEnrol != nil {
+			if lo == 0 || *in.ToEnrol < lo {
+				lo = *in.ToEnrol
+			}
+			hi = max(hi, *in.ToEnrol)
+		}
+	}
+	text := "Each study in turn, everything else as planned."
+	c := w.p.Size.Chosen
+	switch {
+	case c == nil || hi == 0:
+	case lo == hi && hi == c.ToEnrol.Total:
+		text += fmt.Sprintf(" The number stays at %s whichever is left out: it is sized for the scenario ‘%s’, which does not hang on them. The assurance does.", wholeText(hi), clipRunes(scenarioWords(w.p, c.Scenario), 60))
+	default:
+		text += fmt.Sprintf(" The number runs from %s to %s. Where a study moves the plan, look at its row first.", wholeText(lo), wholeText(hi))
+	}
+	return note{"Leaving out", text}
 }
 
 // betweenNote is the margin of the groups: the test between them, and how little it can say.
