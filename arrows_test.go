@@ -30,7 +30,7 @@ var arrows = map[string][]string{
 	"plan":               {"importers", "meta", "meta/effect", "meta/smallstudy", "meta/prior", "power", "plan/result", "plan/choices", "plan/edition"},
 	"plan/qualify":       {"importers", "meta", "meta/effect", "meta/smallstudy", "meta/prior", "power", "plan", "plan/result", "testdata/published"},
 	"reports":            {"plan", "plan/result", "plan/edition", "plan/qualify"},
-	"reports/check":      {"plan", "plan/result", "reports"},
+	"reports/check":      {"plan", "plan/result", "plan/edition", "reports"},
 	"testdata/published": {},
 	"cmd/footing":        {"plan", "plan/result", "plan/edition", "plan/qualify", "reports", "reports/check", "importers", "testdata/published"},
 }

@@ -12,12 +12,15 @@ const mostDiffers = 40
 // TextCheck says, number by number, which printed digits of a report did not come out again.
 func TextCheck(c *result.Check, o TextOptions) string {
 	w := &textWriter{o: o}
-	w.head(c.Report, fmt.Sprintf("%d of %d printed numbers reproduced", c.Reproduced, c.Numbers))
-	files := "Computed again by footing " + c.Tool.Version + " from " + c.Plan.Name
+	w.head(TermText(c.Report), fmt.Sprintf("%d of %d printed numbers reproduced", c.Reproduced, c.Numbers))
+	files := "Computed again by footing " + c.Tool.Version + " from " + TermText(c.Plan.Name)
 	if c.Evidence != nil {
-		files += " and " + c.Evidence.Name
+		files += " and " + TermText(c.Evidence.Name)
 	}
-	w.wrapped("", 0, files+", which the report carries.")
+	if c.Editions != nil {
+		files += ", with the editions kept before"
+	}
+	w.wrapped("", 0, files+": all of it stands in the report.")
 	section := ""
 	for i, d := range c.Differs {
 		if i == mostDiffers {
@@ -38,10 +41,6 @@ func TextCheck(c *result.Check, o TextOptions) string {
 			computed = "does not come out"
 		}
 		w.wrapped("  ", 4, fmt.Sprintf("%s: printed %s, computed %s", TermText(d.Label), TermText(printed), TermText(computed)))
-	}
-	for _, u := range c.Unchecked {
-		w.blank()
-		w.wrapped("", 0, fmt.Sprintf("Not checked: %d %s under %q; %s.", u.Numbers, plural(u.Numbers, "number", "numbers"), TermText(u.Section), u.Why))
 	}
 	w.blank()
 	end := "Printed digits reproduced. Whether the plan and the evidence are right is another question."

@@ -132,7 +132,7 @@ func runPlan(path string) (*result.Plan, []output, error) {
 	return p, files, err
 }
 
-// render makes the files of a result; the report carries the plan and the evidence that it came from.
+// render makes the files of a result; the report carries the plan, the evidence and the editions that it came from.
 func render(file *plan.File, p *result.Plan) ([]output, error) {
 	var enclosed []reports.HTMLOption
 	if data, err := os.ReadFile(file.Path); err == nil {
@@ -142,6 +142,14 @@ func render(file *plan.File, p *result.Plan) ([]output, error) {
 		if data, err := os.ReadFile(name); err == nil {
 			enclosed = append(enclosed, reports.Enclose(file.Evidence.File, data))
 		}
+	}
+	pack, err := editionsOf(file.Path).Pack()
+	if err != nil {
+		return nil, err
+	}
+	if pack != nil {
+		name := filepath.Base(file.Path)
+		enclosed = append(enclosed, reports.Enclose(strings.TrimSuffix(name, filepath.Ext(name))+edition.PackEnding, pack))
 	}
 	book := make(chan made, 1)
 	go func() { book <- making(func() ([]byte, error) { return reports.Workbook(p) }) }()

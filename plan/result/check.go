@@ -7,10 +7,10 @@ type Check struct {
 	Report     string           `json:"report"` // file name
 	Plan       CheckedFile      `json:"plan"`
 	Evidence   *CheckedFile     `json:"evidence"`   // null for a plan without evidence
-	Numbers    int              `json:"numbers"`    // printed in the report and computed again
+	Editions   *CheckedFile     `json:"editions"`   // the kept editions, packed; null where the plan had none
+	Numbers    int              `json:"numbers"`    // printed in the report
 	Reproduced int              `json:"reproduced"` // of these, with the same digits
 	Differs    []PrintedDiffers `json:"differs"`
-	Unchecked  []Unchecked      `json:"unchecked"`
 }
 
 // CheckedFile is a file inside the report.
@@ -25,11 +25,4 @@ type PrintedDiffers struct {
 	Label    string `json:"label"` // of its row, its drawing, or the words around it
 	Printed  string `json:"printed"`
 	Computed string `json:"computed"`
-}
-
-// Unchecked are numbers that can't be computed from what the report holds.
-type Unchecked struct {
-	Section string `json:"section"`
-	Numbers int    `json:"numbers"`
-	Why     string `json:"why"`
 }

@@ -7,11 +7,10 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
-	"regexp"
-	"strconv"
 	"strings"
 
 	"footing/plan"
+	"footing/plan/edition"
 	"footing/plan/result"
 	"footing/reports"
 )
@@ -38,11 +37,11 @@ func report(name string, page []byte) (*result.Check, error) {
 	if err != nil {
 		return nil, err
 	}
-	p, evidence, err := again(files)
+	out := &result.Check{Schema: "footing/check/1", Tool: plan.ThisTool(), Report: filepath.Base(name), Plan: checkedFile(files[0]), Differs: []result.PrintedDiffers{}}
+	p, err := again(out, files)
 	if err != nil {
 		return nil, err
 	}
-	p.Edition = editionOf(printed)
 	fresh, err := reports.HTML(p)
 	if err != nil {
 		return nil, err
@@ -51,9 +50,7 @@ func report(name string, page []byte) (*result.Check, error) {
 	if err != nil {
 		return nil, err
 	}
-	out := &result.Check{Schema: "footing/check/1", Tool: plan.ThisTool(), Report: filepath.Base(name), Plan: checkedFile(files[0]), Evidence: evidence,
-		Differs: []result.PrintedDiffers{}, Unchecked: []result.Unchecked{}}
-	compare(out, setAside(out, printed), setAside(nil, computed))
+	compare(out, printed, computed)
 	return out, nil
 }
 
@@ -62,34 +59,52 @@ func checkedFile(f reports.EnclosedFile) result.CheckedFile {
 	return result.CheckedFile{Name: f.Name, SHA256: hex.EncodeToString(sum[:])}
 }
 
-// again runs the enclosed plan on the enclosed evidence in a folder of its own.
-func again(files []reports.EnclosedFile) (p *result.Plan, evidence *result.CheckedFile, err error) {
+// again runs the enclosed plan on the enclosed evidence in a folder of its own, against the enclosed editions. The plan comes first in a report, then the evidence that it
+// names, then the editions.
+func again(out *result.Check, files []reports.EnclosedFile) (p *result.Plan, err error) {
 	dir, err := os.MkdirTemp("", "footing-check-")
 	if err != nil {
-		return nil, nil, err
+		return nil, err
 	}
 	defer func() { err = errors.Join(err, os.RemoveAll(dir)) }()
-	f, err := plan.Parse(filepath.Join(dir, safeName(files[0].Name, "plan.yaml")), files[0].Data)
+	path := filepath.Join(dir, safeName(files[0].Name, "plan.yaml"))
+	if err := os.WriteFile(path, files[0].Data, 0o600); err != nil {
+		return nil, err
+	}
+	f, err := plan.Load(path)
 	if err != nil {
-		return nil, nil, inReport(dir, err)
+		return nil, inReport(dir, err)
 	}
-	typed := f.Evidence.File
-	if typed != "" {
-		if len(files) < 2 {
-			return nil, nil, fmt.Errorf("the plan in this report names the evidence %s, which the report does not carry", typed)
+	rest := files[1:]
+	if typed := f.Evidence.File; typed != "" {
+		if len(rest) == 0 || isPack(rest[0]) {
+			return nil, fmt.Errorf("the plan in this report names the evidence %s, which the report does not carry", typed)
 		}
-		e := checkedFile(files[1])
-		evidence = &e
-		f.Evidence.File = safeName(typed, "evidence"+filepath.Ext(files[1].Name))
-		if err := os.WriteFile(filepath.Join(dir, f.Evidence.File), files[1].Data, 0o600); err != nil {
-			return nil, nil, err
+		e := checkedFile(rest[0])
+		out.Evidence = &e
+		f.Evidence.File = safeName(typed, "evidence"+filepath.Ext(rest[0].Name))
+		if f.Evidence.File == filepath.Base(path) {
+			return nil, fmt.Errorf("the plan in this report names itself, %s, as its evidence", typed)
+		}
+		if err := os.WriteFile(filepath.Join(dir, f.Evidence.File), rest[0].Data, 0o600); err != nil {
+			return nil, err
+		}
+		rest = rest[1:]
+	}
+	if len(rest) > 0 && isPack(rest[0]) {
+		e := checkedFile(rest[0])
+		out.Editions = &e
+		if err := edition.Beside(path).Unpack(rest[0].Data); err != nil {
+			return nil, inReport(dir, err)
 		}
 	}
-	if p, err = plan.Run(f); err != nil {
-		return nil, nil, inReport(dir, err)
+	if p, err = plan.RunSince(f); err != nil {
+		return nil, inReport(dir, err)
 	}
-	return p, evidence, nil
+	return p, nil
 }
+
+func isPack(f reports.EnclosedFile) bool { return strings.HasSuffix(f.Name, edition.PackEnding) }
 
 // inReport takes the folder of the unpacked files out of a message.
 func inReport(dir string, err error) error {
@@ -103,18 +118,4 @@ func safeName(name, fallback string) string {
 		return fallback
 	}
 	return name
-}
-
-var editionWords = regexp.MustCompile(`^edition (\d+)$`)
-
-// editionOf reads the number that the report gives itself: it comes from the kept editions, which a report does not carry.
-func editionOf(printed []reports.PrintedNumber) int {
-	for _, n := range printed {
-		if m := editionWords.FindStringSubmatch(n.Label); n.Section == "" && m != nil {
-			if k, err := strconv.Atoi(m[1]); err == nil {
-				return k
-			}
-		}
-	}
-	return 0
 }

@@ -8,6 +8,7 @@ import (
 	"testing"
 
 	"footing/plan"
+	"footing/plan/edition"
 	"footing/plan/result"
 	"footing/reports"
 )
@@ -154,5 +155,57 @@ func TestSafeName(t *testing.T) {
 		if got := safeName(given, "f"); got != want {
 			t.Errorf("%q: %q", given, got)
 		}
+	}
+}
+
+// A report that compares itself with kept editions carries them, and its comparison comes out again too.
+func TestComparisonWithEditionsComesOutAgain(t *testing.T) {
+	dir := t.TempDir()
+	path := filepath.Join(dir, "plan.yaml")
+	text := []byte(strings.Replace(planText, "EVIDENCE", "evidence.csv", 1))
+	put := func(name string, data []byte) {
+		if err := os.WriteFile(filepath.Join(dir, name), data, 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	load := func() *plan.File {
+		f, err := plan.Load(path)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return f
+	}
+	put("plan.yaml", text)
+	put("evidence.csv", []byte(sheet))
+	if _, err := plan.Freeze(load(), "2026-11-03", "AB", "first", false); err != nil {
+		t.Fatal(err)
+	}
+	more := []byte(sheet + "F,2022,70,11.5,4.0,70,10.9,4.1\n")
+	put("evidence.csv", more)
+	p, err := plan.RunSince(load())
+	if err != nil {
+		t.Fatal(err)
+	}
+	if p.Since == nil || len(p.Since.Added) != 1 {
+		t.Fatalf("no comparison: %+v", p.Since)
+	}
+	pack, err := edition.Beside(path).Pack()
+	if err != nil {
+		t.Fatal(err)
+	}
+	page, err := reports.HTML(p, reports.Enclose("plan.yaml", text), reports.Enclose("evidence.csv", more), reports.Enclose("plan"+edition.PackEnding, pack))
+	if err != nil {
+		t.Fatal(err)
+	}
+	c := checked(t, page)
+	if c.Editions == nil || c.Reproduced != c.Numbers || len(c.Differs) > 0 {
+		t.Errorf("%d of %d reproduced: %+v", c.Reproduced, c.Numbers, c.Differs)
+	}
+	without, err := reports.HTML(p, reports.Enclose("plan.yaml", text), reports.Enclose("evidence.csv", more))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if c := checked(t, without); len(c.Differs) == 0 {
+		t.Error("a comparison without its editions can't come out again, and was not told")
 	}
 }

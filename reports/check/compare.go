@@ -7,35 +7,6 @@ import (
 	"footing/reports"
 )
 
-var (
-	sinceSection = regexp.MustCompile(`^Since edition \d+$`)
-	sinceLine    = regexp.MustCompile(`^Since edition \d+`) // the line of the answer that tells what changed
-)
-
-// setAside takes out what can't be computed from the report: the comparison with earlier editions. With a check it is listed there.
-func setAside(out *result.Check, numbers []reports.PrintedNumber) []reports.PrintedNumber {
-	var keep []reports.PrintedNumber
-	for _, n := range numbers {
-		if !sinceSection.MatchString(n.Section) && !sinceLine.MatchString(n.Label) && !(n.Section == "" && editionWords.MatchString(n.Label)) {
-			keep = append(keep, n)
-			continue
-		}
-		if out == nil {
-			continue
-		}
-		section := n.Section
-		if section == "" {
-			section = "the edition's number"
-		}
-		if last := len(out.Unchecked) - 1; last >= 0 && out.Unchecked[last].Section == section {
-			out.Unchecked[last].Numbers++
-			continue
-		}
-		out.Unchecked = append(out.Unchecked, result.Unchecked{Section: section, Numbers: 1, Why: "it comes from the kept editions, which a report does not carry"})
-	}
-	return keep
-}
-
 // place is where numbers are held against each other: in their order under one section and label.
 type place struct{ section, label string }
 
