@@ -21,7 +21,8 @@ func ReadAdded(f *File, from, sheet string) (*Added, error) {
 	if err != nil {
 		return nil, err
 	}
-	opt := importers.Options{SheetName: full.Evidence.Sheet, Columns: full.Evidence.Columns, Groups: full.Study.Groups, Name: full.Evidence.File}
+	opt := importers.Options{SheetName: full.Evidence.Sheet, Columns: full.Evidence.Columns, Groups: full.Study.Groups, Name: full.Evidence.File,
+		Encoding: full.Evidence.Encoding, Decimal: full.Evidence.DecimalMark}
 	old, err := importers.Read(full.EvidencePath(), opt)
 	if err != nil {
 		return nil, err
@@ -29,7 +30,7 @@ func ReadAdded(f *File, from, sheet string) (*Added, error) {
 	g := *full
 	g.Path = "" // the new sheet is named as the person named it, not relative to the plan
 	g.Evidence.File, g.Evidence.Sheet, g.Evidence.Decisions, g.Evidence.KeepWhere, g.Pool.Scale = from, sheet, nil, nil, string(ev.Scale)
-	g.Pool.SubgroupBy, g.Pool.Relevance = "", ""
+	g.Pool.SubgroupBy, g.Pool.Relevance, g.Evidence.Encoding, g.Evidence.DecimalMark = "", "", "", ""
 	g.Evidence.Columns = columnsThere(full.Evidence.Columns, from, sheet, full.Study.Groups)
 	added, err := ReadEvidence(&g)
 	if err != nil {

@@ -120,6 +120,8 @@ func judgeN(a, b *result.Plan, by float64, say sayRule) {
 		say(rule, fmt.Sprintf("there was none, now it is %d", y.N.Total), true)
 	case y == nil:
 		say(rule, "no size exists any more", true)
+	case x.N.Total == y.N.Total:
+		say(rule, fmt.Sprintf("it is %d as before", y.N.Total), false)
 	default:
 		move := float64(y.N.Total)/float64(x.N.Total) - 1
 		say(rule, fmt.Sprintf("it moved from %d to %d (%+.0f%%)", x.N.Total, y.N.Total, 100*move), math.Abs(move) >= by-1e-12)
