@@ -35,6 +35,9 @@ func Methods() []Method {
 // FindMethod looks an entry up by any of its names; near is the closest name when there is none.
 func FindMethod(name string) (m Method, near string, ok bool) {
 	want := foldName(name)
+	if strings.HasPrefix(want, "selection-model-at-") { // named after the chance that a plan gives
+		want = "selection-model-given"
+	}
 	var names []string
 	for _, x := range manual {
 		for _, n := range append([]string{x.Name, x.Words}, x.Also...) {
@@ -63,8 +66,8 @@ func methodsUsed(p *result.Plan) []result.MethodUsed {
 	used := map[string]bool{}
 	use := func(names ...string) {
 		for _, n := range names {
-			if n != "" {
-				used[foldName(n)] = true
+			if m, _, ok := FindMethod(n); ok && n != "" {
+				used[m.Name] = true
 			}
 		}
 	}

@@ -68,3 +68,15 @@ func TestEveryTestOfAStudyHasAnEntry(t *testing.T) {
 		}
 	}
 }
+
+func TestEveryCheckOfSmallStudiesHasAnEntry(t *testing.T) {
+	p := mustRun(t, folder(t, inventedPlan, inventedCounts))
+	if len(p.Pool.SmallStudy) < 3 {
+		t.Errorf("only %d checks", len(p.Pool.SmallStudy))
+	}
+	for _, s := range p.Pool.SmallStudy {
+		if _, _, ok := FindMethod(s.Name); !ok {
+			t.Errorf("%s has no entry in the manual", s.Name)
+		}
+	}
+}
