@@ -30,6 +30,8 @@ func PoolStudies(f *File, ev *EvidenceRead) (*result.Pool, error) {
 	out.Estimators = p.estimators()
 	out.SmallStudy = p.smallStudies()
 	out.Influence = p.influence()
+	p.groups(out)
+	out.Cumulative = p.cumulative()
 	out.Findings = p.findings(out)
 	out.Sentences = poolSentences(out)
 	return out, nil
