@@ -10,7 +10,7 @@ import (
 	"footing/meta/effect"
 )
 
-type fitted struct {
+type referenceFit struct {
 	Mean, SE, Tau2, Chance, LR float64
 }
 
@@ -27,9 +27,9 @@ type referenceSet struct {
 	Pet       [4]float64
 	Peese     [4]float64
 	Kendall   float64
-	Half      fitted
-	Quarter   fitted
-	Selection *fitted
+	Half      referenceFit
+	Quarter   referenceFit
+	Selection *referenceFit
 	Tables    [][4]float64
 	Peters    [4]float64
 	Harbord   [4]float64
@@ -89,7 +89,7 @@ func TestAgainstReference(t *testing.T) {
 		near(t, s.Name+" PEESE", peese.Value, s.Peese[0], 1e-8)
 		near(t, s.Name+" PEESE, SE", peese.StandardError, s.Peese[1], 1e-8)
 		near(t, s.Name+" rank correlation", RankCorrelation(d).Figures["tau"], s.Kendall, 1e-10)
-		for chance, want := range map[float64]fitted{0.5: s.Half, 0.25: s.Quarter} {
+		for chance, want := range map[float64]referenceFit{0.5: s.Half, 0.25: s.Quarter} {
 			r := SelectionGiven(d, s.Sign, chance, 0.95)
 			if !r.Available {
 				t.Errorf("%s at %g: %s", s.Name, chance, r.Why)

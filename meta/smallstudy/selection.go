@@ -4,9 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"gonum.org/v1/gonum/mat"
-	"gonum.org/v1/gonum/optimize"
-
 	"footing/internal/num"
 	"footing/meta"
 )
@@ -35,6 +32,8 @@ type model struct {
 	y, v []float64
 	cut  []float64 // the estimate at which p equals the cut: z sqrt(v)
 	seen []bool    // y at or beyond it
+	// typical is the harmonic mean of the variances, set by fit.
+	typical float64
 }
 
 func newModel(d meta.Data, sign float64) *model {
@@ -76,169 +75,6 @@ func (m *model) minusLog(mu, tau2, omega float64) float64 {
 		}
 	}
 	return sum.Value()
-}
-
-// fit minimises over the mean and tau2, and over omega unless it is given. Parameters are (mean, log tau2, log omega); tau2 = 0 is compared by itself.
-func (m *model) fit(start meta.Mean, given float64) (mu, tau2, omega, value float64, converged bool) {
-	smallest := m.v[0]
-	for _, v := range m.v {
-		smallest = math.Min(smallest, v)
-	}
-	floor := smallest * 1e-6
-	type point struct {
-		mu, tau2, omega, value float64
-		ok                     bool
-	}
-	best := point{value: math.Inf(1)}
-	try := func(withTau bool, tau0, omega0 float64) {
-		unpack := func(x []float64) (float64, float64, float64) {
-			mu, at := x[0], 1
-			tau2, omega := 0.0, given
-			if withTau {
-				tau2 = math.Exp(math.Min(x[at], 50))
-				at++
-			}
-			if given == 0 {
-				omega = math.Exp(math.Max(-30, math.Min(x[at], 30)))
-			}
-			return mu, tau2, omega
-		}
-		x0 := []float64{start.Estimate}
-		if withTau {
-			x0 = append(x0, math.Log(math.Max(tau0, floor)))
-		}
-		if given == 0 {
-			x0 = append(x0, math.Log(omega0))
-		}
-		f := func(x []float64) float64 {
-			a, b, c := unpack(x)
-			if v := m.minusLog(a, b, c); !math.IsNaN(v) {
-				return v
-			}
-			return 1e300
-		}
-		res, err := optimize.Minimize(optimize.Problem{Func: f}, x0, &optimize.Settings{Converger: &optimize.FunctionConverge{Absolute: 1e-13, Iterations: 200}, MajorIterations: 4000}, &optimize.NelderMead{SimplexSize: 0.3})
-		if err != nil && res == nil {
-			return
-		}
-		x := polish(f, res.X)
-		a, b, c := unpack(x)
-		if b < floor {
-			b = 0
-		}
-		if v := m.minusLog(a, b, c); v < best.value-1e-12 {
-			best = point{a, b, c, v, gradientSmall(f, x)}
-		}
-	}
-	for _, omega0 := range []float64{1, 0.3} {
-		try(false, 0, omega0)
-		try(true, math.Max(start.TauSquared, smallest/10), omega0)
-		if given != 0 {
-			break
-		}
-	}
-	return best.mu, best.tau2, best.omega, best.value, best.ok
-}
-
-// polish takes a few damped Newton steps with central differences.
-func polish(f func([]float64) float64, x []float64) []float64 {
-	x = append([]float64{}, x...)
-	for step := 0; step < 12; step++ {
-		g, h := derivatives(f, x)
-		var inverse mat.Dense
-		if inverse.Inverse(h) != nil {
-			return x
-		}
-		var move mat.VecDense
-		move.MulVec(&inverse, g)
-		next := make([]float64, len(x))
-		now := f(x)
-		size := 0.0
-		for i := range x {
-			next[i] = x[i] - move.AtVec(i)
-			size = math.Max(size, math.Abs(move.AtVec(i)))
-		}
-		if !(f(next) <= now+1e-12*math.Abs(now)) || size > 1 {
-			return x
-		}
-		x = next
-		if size < 1e-9 {
-			return x
-		}
-	}
-	return x
-}
-
-// derivatives are gradient and Hessian by central differences.
-func derivatives(f func([]float64) float64, x []float64) (*mat.VecDense, *mat.Dense) {
-	n := len(x)
-	h := make([]float64, n)
-	for i := range x {
-		h[i] = 2e-4 * math.Max(0.1, math.Abs(x[i]))
-	}
-	at := func(i int, si float64, j int, sj float64) float64 {
-		y := append([]float64{}, x...)
-		y[i] += si * h[i]
-		if j >= 0 {
-			y[j] += sj * h[j]
-		}
-		return f(y)
-	}
-	g, hess := mat.NewVecDense(n, nil), mat.NewDense(n, n, nil)
-	centre := f(x)
-	for i := 0; i < n; i++ {
-		up, down := at(i, 1, -1, 0), at(i, -1, -1, 0)
-		g.SetVec(i, (up-down)/(2*h[i]))
-		hess.Set(i, i, (up-2*centre+down)/(h[i]*h[i]))
-		for j := 0; j < i; j++ {
-			v := (at(i, 1, j, 1) - at(i, 1, j, -1) - at(i, -1, j, 1) + at(i, -1, j, -1)) / (4 * h[i] * h[j])
-			hess.Set(i, j, v)
-			hess.Set(j, i, v)
-		}
-	}
-	return g, hess
-}
-
-func gradientSmall(f func([]float64) float64, x []float64) bool {
-	g, _ := derivatives(f, x)
-	for i := 0; i < g.Len(); i++ {
-		if math.Abs(g.AtVec(i)) > 1e-4 {
-			return false
-		}
-	}
-	return true
-}
-
-// information gives the variances of mean and log omega from the observed information in (mean, tau2, omega); tau2 is left out of it at 0.
-func (m *model) information(mu, tau2, omega float64, given bool) (varMean, varLogOmega float64, ok bool) {
-	x := []float64{mu}
-	if tau2 > 0 {
-		x = append(x, math.Log(tau2))
-	}
-	if !given {
-		x = append(x, math.Log(omega))
-	}
-	f := func(x []float64) float64 {
-		at, t, o := 1, 0.0, omega
-		if tau2 > 0 {
-			t = math.Exp(x[at])
-			at++
-		}
-		if !given {
-			o = math.Exp(x[at])
-		}
-		return m.minusLog(x[0], t, o)
-	}
-	_, h := derivatives(f, x)
-	var inverse mat.Dense
-	if inverse.Inverse(h) != nil {
-		return 0, 0, false
-	}
-	varMean = inverse.At(0, 0)
-	if !given {
-		varLogOmega = inverse.At(len(x)-1, len(x)-1)
-	}
-	return varMean, varLogOmega, varMean > 0 && varLogOmega >= 0
 }
 
 // Selection fits the step-function selection model (Vevea & Hedges 1995) with one cut at a one-sided p of .025 in the favoured direction (sign +1 where larger is favoured): standard errors from the observed
@@ -287,7 +123,7 @@ func (m *model) result(d meta.Data, sign, level, given float64, out SelectionRes
 		out.Why = out.Mean.Why
 		return out
 	}
-	out.TauSquared, out.Chance, out.Converged, out.Available = tau2, omega, converged, true
+	out.TauSquared, out.Chance, out.Converged, out.Available = tau2, omega, true, true
 	if given == 0 {
 		z := num.NormalQuantileUpper((1 - level) / 2)
 		s := math.Sqrt(varLogOmega)
