@@ -80,6 +80,12 @@ func (c *checker) general() {
 	c.date("date", c.f.Date)
 	c.oneOf("range: basis", c.f.Range.Basis, bases)
 	c.between("pool: level", c.f.Pool.Level, 0, 1)
+	if name := c.f.SmallStudies.AdjustBy; name != "" {
+		c.oneOf("small studies: adjust by", name, adjustments(c.f))
+	}
+	if x := c.f.SmallStudies.RelativeChance; x != nil && !(*x > 0 && *x <= 1) {
+		c.bad("small studies: relative chance of publication", fmt.Sprintf("%v is not possible", *x), "write a number above 0 and at most 1")
+	}
 	if _, err := meta.EstimatorByName(c.f.Pool.Heterogeneity); err != nil {
 		var names []string
 		for _, e := range meta.Estimators() {
@@ -97,6 +103,15 @@ func (c *checker) general() {
 		}
 		c.oneOf("pool: scale", c.f.Pool.Scale, names)
 	}
+}
+
+// adjustments are the adjusted estimates that a plan can name.
+func adjustments(f *File) []string {
+	out := []string{"none", "selection-model", "henmi-copas", "pet-peese", "pet", "peese", "trim-and-fill", "limit-estimate", "unrestricted-least-squares", "adequately-powered", "worst-case", givenName(halfChance), givenName(quarterChance)}
+	if c := f.SmallStudies.RelativeChance; c != nil {
+		out = append(out, givenName(*c))
+	}
+	return out
 }
 
 func (c *checker) date(path, s string) {

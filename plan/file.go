@@ -76,7 +76,10 @@ type Pool struct {
 
 // SmallStudies says which adjusted estimate the scenarios use.
 type SmallStudies struct {
+	// AdjustBy names the adjusted estimate; "none" asks for the unadjusted distribution. Unnamed, the scenarios use the unadjusted one and small-study-adjusted follows the rule of defaultAdjustment.
 	AdjustBy string `yaml:"adjust by"`
+	// RelativeChance is the chance of publication of a result that misses significance in the favoured direction, relative to one that meets it; used as given where the studies are too few to estimate it. nil means .5.
+	RelativeChance *float64 `yaml:"relative chance of publication"`
 }
 
 // Range says what the planned study's effect may be.

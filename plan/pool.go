@@ -61,6 +61,9 @@ func newPooler(f *File, ev *EvidenceRead) (*pooler, error) {
 	if p.method, err = meta.ParseIntervalMethod(f.Pool.Interval); err != nil {
 		return nil, planProblem(f, "interval-unknown", "pool: interval: "+err.Error(), "use one of those")
 	}
+	if p.method == meta.ProfileLikelihood && p.estimator.Name != "maximum-likelihood" {
+		return nil, planProblem(f, "interval-without-its-estimator", "pool: interval: profile-likelihood goes with the maximum-likelihood estimate, not with "+p.estimator.Name, "write heterogeneity: maximum-likelihood under pool:")
+	}
 	if p.data, err = meta.NewData(ev.Estimates); err != nil {
 		what := fmt.Sprintf("none of %d rows has a usable estimate, so there is nothing to pool", len(ev.Studies))
 		if len(ev.Estimates) > 0 {
@@ -240,7 +243,7 @@ func (p *pooler) estimators() []result.Estimator {
 			}
 		}
 		one.Estimate = number(p.data.MeanAt(value).Estimate)
-		for _, m := range meta.IntervalMethods() {
+		for _, m := range []string{meta.Normal, meta.HartungKnapp, meta.HartungKnappFloored} {
 			one.Intervals = append(one.Intervals, estimatorInterval(p.data.Interval(m, value, p.level)))
 		}
 		one.Predictions = []result.EstimatorInterval{estimatorInterval(p.data.Prediction(value, p.level))}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 
+	"footing/internal/num"
 	"footing/meta"
 	"footing/meta/smallstudy"
 	"footing/plan/result"
@@ -15,7 +16,19 @@ func (p *pooler) smallStudies() []result.SmallStudy {
 	if p.data.K() < fewStudies {
 		weak = fmt.Sprintf("with %s a check like this can't reassure: fewer than %d are too few", countOf(p.data.K(), "study", "studies"), fewStudies)
 	}
-	out := []result.SmallStudy{p.henmiCopas(), p.egger(), p.trimFill()}
+	parts := []func() []result.SmallStudy{
+		p.selectionModels,
+		func() []result.SmallStudy { return []result.SmallStudy{p.henmiCopas()} },
+		p.regressionEstimates,
+		func() []result.SmallStudy { return []result.SmallStudy{p.trimFill(), p.worstCase()} },
+		p.tests,
+	}
+	done := make([][]result.SmallStudy, len(parts))
+	num.Chunks(len(parts), func(i int) { done[i] = parts[i]() })
+	var out []result.SmallStudy
+	for _, part := range done {
+		out = append(out, part...)
+	}
 	for i := range out {
 		if out[i].Why == "" {
 			out[i].Weak = weak

@@ -69,6 +69,8 @@ func poolSentences(p *result.Pool) []string {
 		switch {
 		case *h.TauSquared == 0:
 			say("The studies differ no more than chance alone makes them (tau-squared 0, Q %.1f on %d degrees of freedom).", *h.Q, h.DF)
+		case h.P != nil && *h.P > 0.1:
+			say("The studies may differ little more than chance makes them: %.0f%% of the variation between their results is between-study variance (tau %.2f; Q %.1f on %d degrees of freedom, p = %s), but few studies can't rule out more.", 100**h.ISquared, *h.Tau, *h.Q, h.DF, shortP(*h.P))
 		default:
 			say("The studies differ by more than chance: %.0f%% of the variation between their results is between-study variance (tau %.2f).", 100**h.ISquared, *h.Tau)
 		}

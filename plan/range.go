@@ -140,7 +140,10 @@ func (b *ranger) adjust(k int, tau float64, basis string) error {
 	name := b.file.SmallStudies.AdjustBy
 	b.out.UsesAdjusted = name != "" && name != "none"
 	if !b.out.UsesAdjusted {
-		name = defaultAdjustment
+		name = "selection-model"
+	}
+	if name == "selection-model" {
+		name = b.selection()
 	}
 	var names []string
 	for _, s := range b.pool.SmallStudy {
@@ -176,8 +179,22 @@ func (b *ranger) adjust(k int, tau float64, basis string) error {
 	return nil
 }
 
-// defaultAdjustment is the adjusted estimate of the scenario small-study-adjusted when the plan names none.
-const defaultAdjustment = "henmi-copas"
+// selection is the selection model that can speak here: the fitted one where at least 10 studies with 3 or more on each side of its cut let it be estimated, else the same with the plan's relative chance of
+// publication, and where that has no maximum either, the Henmi-Copas interval.
+func (b *ranger) selection() string {
+	chance := halfChance
+	if c := b.file.SmallStudies.RelativeChance; c != nil {
+		chance = *c
+	}
+	for _, want := range []string{"selection-model", givenName(chance)} {
+		for _, s := range b.pool.SmallStudy {
+			if s.Name == want && s.Estimate != nil {
+				return want
+			}
+		}
+	}
+	return "henmi-copas"
+}
 
 func orNone(names []string) string {
 	if len(names) == 0 {
