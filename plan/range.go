@@ -216,6 +216,17 @@ func joinWords(names []string) string {
 
 var tabulated = []float64{0.005, 0.01, 0.025, 0.05, 0.1, 0.2, 0.25, 0.3, 0.4, 0.5, 0.6, 0.7, 0.75, 0.8, 0.9, 0.95, 0.975, 0.99, 0.995}
 
+// tellsLittle says how well the selection model knows its relative chance of publication.
+func (b *ranger) tellsLittle() string {
+	for _, s := range b.pool.SmallStudy {
+		low, high := s.Figures["its lower limit"], s.Figures["its upper limit"]
+		if s.Name == b.out.AdjustedBy && low > 0 && low < 1 && high > 1 {
+			return fmt.Sprintf("; its relative chance of publication is %.2f (%.2f to %.2f), so that the studies can hardly tell, and %s stands beside it", s.Figures["relative chance"], low, high, givenName(halfChance))
+		}
+	}
+	return ""
+}
+
 func describe(l prior.Located, words string) *result.Distribution {
 	out := &result.Distribution{Kind: "student-t", Words: words, Location: number(l.Location), Scale: number(l.Scale), DF: number(l.DF)}
 	if math.IsInf(l.DF, 1) {
@@ -298,7 +309,7 @@ func (b *ranger) scenarios() error {
 		}
 		add("cautious", "cautious", cautious, why, true)
 		if b.hasAdjusted {
-			add("small-study-adjusted", "allowing for missing studies", b.adjustedMean, "adjusted by "+b.out.AdjustedBy+": what is left if that method's assumption holds", false)
+			add("small-study-adjusted", "allowing for missing studies", b.adjustedMean, "adjusted by "+b.out.AdjustedBy+": what is left if that method's assumption holds"+b.tellsLittle(), false)
 		}
 		add("lower-limit", "lower limit", b.towardsNone(lowerLevel), fmt.Sprintf("lower limit of the 95%% interval of the %s", which), false)
 	}
