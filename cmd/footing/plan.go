@@ -28,7 +28,7 @@ func (a *app) planCommand() *cobra.Command {
 	c := &cobra.Command{
 		Use:   "plan PLAN",
 		Short: "Goes the whole way: report, workbook, JSON, protocol wording",
-		Long: `Runs a plan and writes report.html, workbook.xlsx, result.json and protocol.txt beside it. Given a
+		Long: `Runs a plan and writes report.html, workbook.xlsx, result.json, protocol.txt and protocol.docx beside it. Given a
 spreadsheet in place of a plan it first writes a plan beside it, every guess marked as assumed, and runs that.
 
 A rerun writes over only what footing wrote itself and nobody has changed since.`,
@@ -118,7 +118,7 @@ func shownNames(dir, out string, files []output) []string {
 	return names
 }
 
-// runPlan runs a plan file and makes its four files.
+// runPlan runs a plan file and makes its files.
 func runPlan(path string) (*result.Plan, []output, error) {
 	file, err := plan.Load(path)
 	if err != nil {
@@ -151,18 +151,20 @@ func render(file *plan.File, p *result.Plan) ([]output, error) {
 		name := filepath.Base(file.Path)
 		enclosed = append(enclosed, reports.Enclose(strings.TrimSuffix(name, filepath.Ext(name))+edition.PackEnding, pack))
 	}
-	book := make(chan made, 1)
+	book, words := make(chan made, 1), make(chan made, 1)
 	go func() { book <- making(func() ([]byte, error) { return reports.Workbook(p) }) }()
+	go func() { words <- making(func() ([]byte, error) { return reports.Document(p) }) }()
 	html := making(func() ([]byte, error) { return reports.HTML(p, enclosed...) })
-	workbook := <-book
-	if err := errors.Join(html.err, workbook.err); err != nil {
+	workbook, document := <-book, <-words
+	if err := errors.Join(html.err, workbook.err, document.err); err != nil {
 		return nil, &toolFault{err}
 	}
 	doc, err := marshal(p)
 	if err != nil {
 		return nil, err
 	}
-	return []output{{"report.html", html.data}, {"workbook.xlsx", workbook.data}, {"result.json", doc}, {"protocol.txt", []byte(reports.Protocol(p))}}, nil
+	return []output{{"report.html", html.data}, {"workbook.xlsx", workbook.data}, {"result.json", doc}, {"protocol.txt", []byte(reports.Protocol(p))},
+		{"protocol.docx", document.data}}, nil
 }
 
 // made is a file made beside others.
