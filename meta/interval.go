@@ -31,7 +31,9 @@ const (
 )
 
 // IntervalMethods lists the methods, the default last.
-func IntervalMethods() []string { return []string{Normal, HartungKnapp, HartungKnappFloored} }
+func IntervalMethods() []string {
+	return []string{ProfileLikelihood, Normal, HartungKnapp, HartungKnappFloored}
+}
 
 // ParseIntervalMethod reads the name of a plan file; "" is the default, the floored Hartung-Knapp interval.
 func ParseIntervalMethod(name string) (string, error) {
@@ -50,10 +52,14 @@ func ParseIntervalMethod(name string) (string, error) {
 // Interval is the interval of the mean under tau2 at a level.
 //
 // normal: mean +- z SE. hartung-knapp: SE^2 times sum w*(y - mean)^2/(k-1), t with k - 1 df (Hartung & Knapp 2001; Sidik & Jonkman 2002).
-// hartung-knapp-floored: the same with that factor not below 1 (Roever, Knapp & Friede 2015).
+// hartung-knapp-floored: the same with that factor not below 1 (Roever, Knapp & Friede 2015). profile-likelihood: by maximum likelihood whatever tau2 is given
+// (Hardy & Thompson 1996).
 func (d Data) Interval(method string, tau2, level float64) Interval {
 	m := d.MeanAt(tau2)
 	out := Interval{Method: method, Level: level, Estimate: m.Estimate, DF: math.Inf(1)}
+	if method == ProfileLikelihood {
+		return d.profileInterval(out)
+	}
 	se := m.StandardError
 	quantile := num.NormalQuantileUpper((1 - level) / 2)
 	if method != Normal {
