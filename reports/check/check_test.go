@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 
@@ -92,13 +93,10 @@ func TestAChangedDigitIsFound(t *testing.T) {
 			continue
 		}
 		forged := n.Text[:len(n.Text)-1] + string('0'+(last-'0'+1)%10)
-		body := bytes.Index(page, []byte("<body"))
-		at := bytes.Index(page[body:], []byte(">"+n.Text+"<"))
-		if at < 0 {
+		changed := changedOnce(t, page, numbers, n.Text, forged)
+		if changed == nil {
 			continue
 		}
-		changed := append([]byte{}, page...)
-		copy(changed[body+at+1:], forged)
 		if c := checked(t, changed); len(c.Differs) == 0 || c.Reproduced == c.Numbers {
 			t.Errorf("%q under %q changed to %q: not found", n.Text, n.Label, forged)
 		}
@@ -106,6 +104,29 @@ func TestAChangedDigitIsFound(t *testing.T) {
 	}
 	if tried < 5 {
 		t.Errorf("only %d numbers were changed", tried)
+	}
+}
+
+// changedOnce writes forged in place of one number of the list, where that stands alone in its element; nil where it does not. Drawings for telephones and the
+// panel repeat numbers and are not read: a place that changes nothing in the list is one of theirs.
+func changedOnce(t *testing.T, page []byte, numbers []reports.PrintedNumber, text, forged string) []byte {
+	t.Helper()
+	at := bytes.Index(page, []byte("<body"))
+	for {
+		next := bytes.Index(page[at:], []byte(">"+text+"<"))
+		if next < 0 {
+			return nil
+		}
+		at += next + 1
+		changed := append([]byte{}, page...)
+		copy(changed[at:], forged)
+		list, err := reports.PrintedNumbers(changed)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if !slices.Equal(list, numbers) {
+			return changed
+		}
 	}
 }
 
