@@ -3,6 +3,7 @@ package qualify
 import (
 	"sort"
 	"strconv"
+	"sync"
 
 	"footing/testdata/published"
 )
@@ -38,6 +39,7 @@ type recipe struct {
 
 // Run recomputes every value for which there is a recipe, in order of topic and id.
 func Run() Report {
+	fill()
 	out := Report{Schema: "footing/qualify/1", Lines: []Line{}}
 	for _, v := range published.All() {
 		r, ok := recipes[v.ID]
@@ -59,8 +61,18 @@ func Run() Report {
 	return out
 }
 
-// recipes by id; the files of this package fill it.
+// recipes by id; the files of this package fill it when they are first asked for, so that other commands don't wait for it.
 var recipes = map[string]recipe{}
+
+// parts are the functions that add recipes, by subject.
+var parts = []func(){effectRecipes, pairedRecipes, recoveryRecipes, conversionRecipes, poolingRecipes, distributionRecipes, moreDistributionRecipes, binomialRecipes, powerRecipes, multiplierRecipes, enrolmentRecipes, moreTrialsRecipes}
+
+// fill runs every part's recipes once.
+var fill = sync.OnceFunc(func() {
+	for _, part := range parts {
+		part()
+	}
+})
 
 func add(convention string, compute func(v published.Value) float64, ids ...string) {
 	for _, id := range ids {

@@ -81,13 +81,6 @@ func tau(d meta.Data, name string) float64 {
 	return e.Estimate(d).Value
 }
 
-func init() {
-	effectRecipes()
-	poolingRecipes()
-	distributionRecipes()
-	powerRecipes()
-}
-
 func effectRecipes() {
 	two := func(v published.Value) effect.Reported {
 		return means(v.Input("mean1"), v.Input("sd1"), v.Input("n1"), v.Input("mean2"), v.Input("sd2"), v.Input("n2"))

@@ -7,12 +7,6 @@ import (
 	"footing/testdata/published"
 )
 
-func init() {
-	pairedRecipes()
-	recoveryRecipes()
-	conversionRecipes()
-}
-
 func pairedRecipes() {
 	opt := effect.Options{Scale: effect.StandardizedMeanDifference, PairedVariance: effect.PairedPrinted, ApproximateJ: true}
 	const words = "the printed paired variance, printed approximation of J"

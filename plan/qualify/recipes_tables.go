@@ -12,14 +12,6 @@ import (
 	"footing/testdata/published"
 )
 
-func init() {
-	multiplierRecipes()
-	enrolmentRecipes()
-	binomialRecipes()
-	moreDistributionRecipes()
-	moreTrialsRecipes()
-}
-
 // multiplierRecipes are printed multiples of (z + z)^2 and tables of normal theory, all from the z test.
 func multiplierRecipes() {
 	for _, id := range append(span("pocock1983", 1, 8), span("pocock1983", 13, 16)...) {
