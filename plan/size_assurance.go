@@ -70,12 +70,13 @@ func (s *sizer) averages(a power.Assurer, ns []int, unadjusted, adjusted power.E
 }
 
 // curvePointsOfN is how many sizes the assurance curve and the panel's grid have; they share them.
-const curvePointsOfN = 26
+const curvePointsOfN = 22
 
 // sizes are first groups spread over the axis that curves share: evenly in the square root, from the least to twice what the plan needs, the chosen one among them.
 func (s *sizer) sizes(points int) []int {
 	most, chosen := s.axis()
-	least := float64(s.design.Info().MinN)
+	// A fiftieth of the axis: nobody reads a curve below that, and the smallest studies take the longest to compute.
+	least := float64(max(s.design.Info().MinN, most/50))
 	seen := map[int]bool{}
 	var out []int
 	add := func(n int) {

@@ -52,7 +52,7 @@ func (s *sizer) sizeCase(x float64, set settings) result.Case {
 	}{{0.8, &c.At80}, {0.9, &c.At90}} {
 		if other.power == set.target {
 			*other.at = c.N
-		} else if z, err := power.SizeFor(s.design, x/s.unit, other.power); err == nil {
+		} else if z, err := power.WholeSizeFor(s.design, x/s.unit, other.power); err == nil {
 			*other.at = nOf(z.Groups)
 		}
 	}
@@ -113,7 +113,7 @@ func (s *sizer) trail(sc result.Scenario) []result.TrailStep {
 		plain := s.set
 		plain.study.BaselineCorrelation = 0
 		if d, unit, err := s.resolve(plain); err == nil {
-			if z, err := power.SizeFor(d, sc.Effect/unit, s.set.target); err == nil {
+			if z, err := power.WholeSizeFor(d, sc.Effect/unit, s.set.target); err == nil {
 				out = append(out, result.TrailStep{Words: "needed at the end", N: *nOf(z.Groups), Source: first})
 			}
 		}

@@ -46,13 +46,18 @@ func (s *sizer) needCurve() {
 			lo, hi = math.Min(lo, sc.Effect*1.5), math.Max(hi, sc.Effect*1.5)
 		}
 	}
-	const points = 61
+	const points = 49
 	s.out.NeedCurve = make([]result.NeedPoint, points)
 	num.Chunks(points, func(i int) {
 		x := lo + (hi-lo)*float64(i)/(points-1)
 		p := result.NeedPoint{Effect: x}
 		if s.sign*x > 0 && s.impossible(s.set, x) == "" && s.design.Guess(x/s.unit, s.set.target) < s.needMost() {
-			if z, err := power.SizeFor(s.design, x/s.unit, s.set.target); err == nil {
+			// Whole sizes are as good in the drawing, but for the smallest, where their steps would show.
+			size := power.WholeSizeFor
+			if s.design.Guess(x/s.unit, s.set.target) < 40 {
+				size = power.SizeFor
+			}
+			if z, err := size(s.design, x/s.unit, s.set.target); err == nil {
 				if p.N = number(z.Continuous); p.N == nil {
 					p.N = number(float64(z.N))
 				}
@@ -81,7 +86,7 @@ func (s *sizer) grid() {
 		far = math.Max(far, s.sign*sc.Effect)
 	}
 	g := &result.Grid{Ns: s.sizes(curvePointsOfN)}
-	const effects = 25
+	const effects = 21
 	for i := 0; i < effects; i++ {
 		x := s.sign * far * 1.4 * (0.04 + 0.96*float64(i)/(effects-1))
 		if s.impossible(s.set, x) == "" {
@@ -117,7 +122,7 @@ func (s *sizer) layers(g *result.Grid) {
 		other = power.Allocation{Treatment: 1, Control: 1}
 	}
 	for _, ratio := range []power.Allocation{own.ratio, other} {
-		for _, a := range []setting{{0.05, 2, ratio}, {0.01, 2, ratio}, {0.10, 2, ratio}} {
+		for _, a := range []setting{{own.alpha, own.sides, ratio}, {0.05, 2, ratio}, {0.01, 2, ratio}} {
 			known := false
 			for _, l := range list {
 				known = known || l.alpha == a.alpha && l.sides == a.sides && l.ratio.String() == a.ratio.String()

@@ -18,7 +18,7 @@ func (s *sizer) resize(set settings) (n *result.N, atChosen *float64, why string
 	if why = s.impossible(set, sc.Effect); why != "" {
 		return nil, nil, why
 	}
-	z, err := power.SizeFor(d, sc.Effect/unit, set.target)
+	z, err := power.WholeSizeFor(d, sc.Effect/unit, set.target)
 	if err != nil {
 		return nil, nil, err.Error()
 	}

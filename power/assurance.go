@@ -34,7 +34,7 @@ type Averaged struct {
 // Power in the intended direction runs from 0 to 1 within a few standard errors; that stretch is integrated by adaptive quadrature, with the distribution's own middle
 // as a break; below it power is nothing, beyond it the distribution's own tail is the integral. All distributions share the power curve.
 func (a Assurer) At(n int, es ...Effects) []Averaged {
-	quick := Quick(a.Design, n)
+	quick := quickly(a.Design, n, int(math.Copysign(1, a.Sign)))
 	from, to := a.stretch(quick, n)
 	// u runs along the intended direction.
 	power := newPowerCurve(func(u float64) float64 { return quick(a.Sign * u).Toward(a.Sign) }, from, to)

@@ -91,7 +91,7 @@ func (t baselineT) rule(total float64) *baselineRule {
 func newBaselineRule(total float64) *baselineRule {
 	points := 14
 	switch {
-	case total >= 400:
+	case total >= 150:
 		points = 3
 	case total >= 60:
 		points = 4
@@ -143,7 +143,7 @@ func (t baselineT) Continuous(effect, n float64) (Rejections, bool) {
 }
 
 func (t baselineT) Guess(effect, target float64) float64 {
-	return normalGuess(t.s, effect, target, t.residual())
+	return normalGuess(t.s, effect, target, t.residual()) + tExtra(t.s)
 }
 
 func (t baselineT) StandardError(_ float64, n int) float64 {

@@ -25,6 +25,18 @@ type Sized struct {
 // SizeFor finds the smallest first group whose power (in both directions together) reaches the target at an effect. For a test whose power saws it is the smallest from
 // which the power holds at every one of the next 60 sizes. The error says why no size exists.
 func SizeFor(d Design, effect, target float64) (Sized, error) {
+	out, err := WholeSizeFor(d, effect, target)
+	// Where the effect is so large that the least study is far too large there is no size before rounding to speak of.
+	if err == nil && !d.Info().Saw && d.Guess(effect, target) >= 1e-3 {
+		if c, ok := continuousN(d, effect, target, out.N); ok {
+			out.Continuous = c
+		}
+	}
+	return out, err
+}
+
+// WholeSizeFor is SizeFor without the size before rounding (Continuous is NaN), in about half the time.
+func WholeSizeFor(d Design, effect, target float64) (Sized, error) {
 	info := d.Info()
 	switch {
 	case !(target > 0 && target < 1):
@@ -48,14 +60,7 @@ func SizeFor(d Design, effect, target float64) (Sized, error) {
 	if !ok {
 		return Sized{}, fmt.Errorf("no size up to %d in the first group reaches a power of %g", MaxN, target)
 	}
-	out := Sized{N: n, Groups: d.Groups(n), Power: d.Power(effect, n), Continuous: math.NaN()}
-	if guess < 1e-3 { // so large an effect that the least study is far too large: there is no size before rounding to speak of
-		return out, nil
-	}
-	if c, ok := continuousN(d, effect, target, n); ok {
-		out.Continuous = c
-	}
-	return out, nil
+	return Sized{N: n, Groups: d.Groups(n), Power: d.Power(effect, n), Continuous: math.NaN()}, nil
 }
 
 // firstTrue finds the smallest n >= from at which a rising condition holds, from a guess.

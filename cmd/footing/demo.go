@@ -108,7 +108,7 @@ func (d demonstration) run(dir string, force bool) demoDone {
 		return out
 	}
 	var files []output
-	if out.result, files, out.err = runPlan(filepath.Join(out.dir, "plan.yaml")); out.err != nil {
+	if out.result, files, out.err = runPlan(filepath.Join(out.dir, "plan.yaml"), extras{}); out.err != nil {
 		return out
 	}
 	if out.err = writeAll(out.dir, "plan.yaml", files, force); out.err != nil {

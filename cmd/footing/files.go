@@ -9,6 +9,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"sync"
 
 	"footing/internal/finding"
 	"footing/plan/edition"
@@ -63,14 +64,18 @@ func writeAll(dir, owner string, files []output, force bool) error {
 			return ps
 		}
 	}
-	for _, f := range files {
-		path := filepath.Join(dir, f.name)
-		if old, err := os.ReadFile(path); err != nil || sum(old) != sum(f.data) {
-			if err := edition.WriteFile(path, f.data); err != nil {
-				return problem("file-unwritable", path, "the file can't be written", "check the folder's permissions, or name another folder")
-			}
-		}
+	// Side by side, since each file is waited for until it is on the disk.
+	faults := make([]error, len(files))
+	var group sync.WaitGroup
+	for i, f := range files {
 		record[f.name] = written{SHA256: sum(f.data), For: owner}
+		group.Go(func() { faults[i] = writeOne(filepath.Join(dir, f.name), f.data) })
+	}
+	group.Wait()
+	for _, err := range faults {
+		if err != nil {
+			return err
+		}
 	}
 	data, err := marshal(record)
 	if err != nil {
@@ -81,6 +86,20 @@ func writeAll(dir, owner string, files []output, force bool) error {
 	}
 	if err := edition.WriteFile(filepath.Join(dir, recordName), data); err != nil {
 		return problem("file-unwritable", filepath.Join(dir, recordName), "the file can't be written", "check the folder's permissions")
+	}
+	return nil
+}
+
+// writeOne writes a file unless it stands there already.
+func writeOne(path string, data []byte) error {
+	if old, err := os.ReadFile(path); err == nil && sum(old) == sum(data) {
+		return nil
+	}
+	if err := os.MkdirAll(filepath.Dir(path), 0o755); err != nil {
+		return problem("folder-unwritable", filepath.Dir(path), "the folder can't be made", "name another one")
+	}
+	if err := edition.WriteFile(path, data); err != nil {
+		return problem("file-unwritable", path, "the file can't be written", "check the folder's permissions, or name another folder")
 	}
 	return nil
 }

@@ -21,6 +21,13 @@ type planFlags struct {
 	sheet  string // of a spreadsheet given in place of a plan
 	force  bool
 	noFile bool
+	extras
+}
+
+// extras are files that are made only when they are asked for, since drawing them takes longer than all the rest.
+type extras struct {
+	document bool // protocol.docx
+	figures  bool // each figure as .svg and .png
 }
 
 func (a *app) planCommand() *cobra.Command {
@@ -28,17 +35,20 @@ func (a *app) planCommand() *cobra.Command {
 	c := &cobra.Command{
 		Use:   "plan PLAN",
 		Short: "Goes the whole way: report, workbook, JSON, protocol wording",
-		Long: `Runs a plan and writes report.html, workbook.xlsx, result.json, protocol.txt and protocol.docx beside it. Given a
-spreadsheet in place of a plan it first writes a plan beside it, every guess marked as assumed, and runs that.
+		Long: `Runs a plan and writes report.html, workbook.xlsx, result.json and protocol.txt beside it; with --document also protocol.docx, with
+--figures each figure as .svg and .png in a folder figures. Given a spreadsheet in place of a plan it first writes a plan beside it, every guess marked as assumed, and
+runs that.
 
 A rerun writes over only what footing wrote itself and nobody has changed since.`,
-		Example: "  footing plan plan.yaml\n  footing plan evidence.xlsx --out drafted\n  footing plan plan.yaml --json --no-files",
+		Example: "  footing plan plan.yaml\n  footing plan evidence.xlsx --out drafted\n  footing plan plan.yaml --json --no-files\n  footing plan plan.yaml --document --figures",
 		Args:    exactArgs(1, 1, "one plan file or spreadsheet"),
 		RunE:    func(_ *cobra.Command, args []string) error { return a.plan(args[0], f) },
 	}
 	c.Flags().StringVar(&f.out, "out", "", "folder for the files (the plan's own)")
 	c.Flags().StringVar(&f.sheet, "sheet", "", "sheet to read, when a spreadsheet is given in place of a plan")
 	c.Flags().BoolVar(&f.force, "force", false, "write over files that footing did not write or that were changed")
+	c.Flags().BoolVar(&f.document, "document", false, "write protocol.docx too: wording, tables and figures for a word processor")
+	c.Flags().BoolVar(&f.figures, "figures", false, "write each figure as .svg and .png too")
 	c.Flags().BoolVar(&f.noFile, "no-files", false, "write no files, only print")
 	a.jsonFlag(c)
 	a.strictFlag(c)
@@ -63,7 +73,7 @@ func (a *app) plan(path string, f planFlags) error {
 		}
 		path, drafted = draft, []string{filepath.Base(draft)}
 	}
-	p, files, err := runPlan(path)
+	p, files, err := runPlan(path, f.extras)
 	if err != nil {
 		return err
 	}
@@ -119,7 +129,8 @@ func shownNames(dir, out string, files []output) []string {
 }
 
 // runPlan runs a plan file and makes its files.
-func runPlan(path string) (*result.Plan, []output, error) {
+func runPlan(path string, more extras) (*result.Plan, []output, error) {
+	go reports.Prepare() // while the numbers are computed
 	file, err := plan.Load(path)
 	if err != nil {
 		return nil, nil, err
@@ -128,12 +139,12 @@ func runPlan(path string) (*result.Plan, []output, error) {
 	if err != nil {
 		return nil, nil, err
 	}
-	files, err := render(file, p)
+	files, err := render(file, p, more)
 	return p, files, err
 }
 
 // render makes the files of a result; the report carries the plan, the evidence and the editions that it came from.
-func render(file *plan.File, p *result.Plan) ([]output, error) {
+func render(file *plan.File, p *result.Plan, more extras) ([]output, error) {
 	var enclosed []reports.HTMLOption
 	if data, err := os.ReadFile(file.Path); err == nil {
 		enclosed = append(enclosed, reports.Enclose(filepath.Base(file.Path), data))
@@ -151,20 +162,39 @@ func render(file *plan.File, p *result.Plan) ([]output, error) {
 		name := filepath.Base(file.Path)
 		enclosed = append(enclosed, reports.Enclose(strings.TrimSuffix(name, filepath.Ext(name))+edition.PackEnding, pack))
 	}
-	book, words := make(chan made, 1), make(chan made, 1)
+	book, document := make(chan made, 1), make(chan made, 1)
 	go func() { book <- making(func() ([]byte, error) { return reports.Workbook(p) }) }()
-	go func() { words <- making(func() ([]byte, error) { return reports.Document(p) }) }()
+	go func() { document <- making(func() ([]byte, error) { return marshal(p) }) }()
 	html := making(func() ([]byte, error) { return reports.HTML(p, enclosed...) })
-	workbook, document := <-book, <-words
-	if err := errors.Join(html.err, workbook.err, document.err); err != nil {
+	workbook, doc := <-book, <-document
+	if err := errors.Join(html.err, workbook.err, doc.err); err != nil {
 		return nil, &toolFault{err}
 	}
-	doc, err := marshal(p)
-	if err != nil {
-		return nil, err
+	files := []output{{"report.html", html.data}, {"workbook.xlsx", workbook.data}, {"result.json", doc.data}, {"protocol.txt", []byte(reports.Protocol(p))}}
+	return more.add(files, p)
+}
+
+// add makes the files that were asked for besides.
+func (more extras) add(files []output, p *result.Plan) ([]output, error) {
+	if more.document {
+		d := making(func() ([]byte, error) { return reports.Document(p) })
+		if d.err != nil {
+			return nil, &toolFault{d.err}
+		}
+		files = append(files, output{"protocol.docx", d.data})
 	}
-	return []output{{"report.html", html.data}, {"workbook.xlsx", workbook.data}, {"result.json", doc}, {"protocol.txt", []byte(reports.Protocol(p))},
-		{"protocol.docx", document.data}}, nil
+	if !more.figures {
+		return files, nil
+	}
+	for _, f := range reports.Figures(p) {
+		drawn, picture := making(f.SVG), making(func() ([]byte, error) { return f.PNG(2) })
+		if err := errors.Join(drawn.err, picture.err); err != nil {
+			return nil, &toolFault{err}
+		}
+		name := filepath.Join("figures", f.Name)
+		files = append(files, output{name + ".svg", drawn.data}, output{name + ".png", picture.data})
+	}
+	return files, nil
 }
 
 // made is a file made beside others.
