@@ -142,6 +142,24 @@ func (t *threatFinder) heterogeneity() {
 }
 
 // smallStudies compares the adjusted effect with the average, where it lies nearer to no effect.
+// asymmetry speaks where the plan's own adjustment finds nothing but small studies show larger effects all the same: what a stated chance of publication would leave.
+func (t *threatFinder) asymmetry(pooled float64) {
+	var p *float64
+	for _, s := range t.p.Pool.SmallStudy {
+		if s.Name == "egger-regression" && s.Weak == "" {
+			p = s.P
+		}
+	}
+	if p == nil || *p >= 0.1 {
+		return
+	}
+	for _, s := range t.p.Pool.SmallStudy {
+		if s.Name == givenName(halfChance) && s.Estimate != nil && *s.Estimate/pooled < 0.9 {
+			t.add(3.3, "Small studies show larger effects:", "the regression on the standard error has p = %s; if results that are not significant were half as likely to be published, %s would be left of the average of %s.", shortP(*p), t.show(*s.Estimate), t.show(pooled))
+		}
+	}
+}
+
 func (t *threatFinder) smallStudies() {
 	pooled := t.p.Pool.Random.Estimate
 	if pooled == nil || t.p.Range == nil {
@@ -154,6 +172,7 @@ func (t *threatFinder) smallStudies() {
 		}
 		left := (s.Effect - none) / (*pooled - none)
 		if left >= 0.9 {
+			t.asymmetry(*pooled)
 			return
 		}
 		rank := 3 + 2*math.Min(1, 1-left)

@@ -78,6 +78,11 @@ func nothingUsable(study string, r *Reported, opt Options) finding.Finding {
 			ways = append(ways, rt.reads)
 		}
 	}
+	// The usual ways; the whole list is a page long.
+	const usual = 4
+	if len(ways) > usual {
+		ways = append(ways[:usual], fmt.Sprintf("or %d other ways, which footing methods lists", len(ways)-usual))
+	}
 	f.Mend = "any of these would do: " + strings.Join(ways, "; ")
 	if r.P.Given && r.P.Bound != Exact {
 		f.Kind, f.Place.Cell, f.Text = "p-is-a-bound", r.P.Cell, r.P.text()
