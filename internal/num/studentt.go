@@ -87,6 +87,9 @@ func studentLogit(q, df float64) float64 {
 		if far > start || df <= 4 {
 			start = math.Max(far, 2*math.Log(z)-math.Log(df))
 		}
+		if far > 600 {
+			return far // the leading power is exact to the last digit there, and y would leave the range of a double
+		}
 	}
 	return betaLogit(1-2*q, 2*q, 0.5, df/2, start)
 }

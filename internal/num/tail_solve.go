@@ -23,12 +23,15 @@ func solveTail(lower, upper, start float64, tails func(v float64) (lower, upper,
 			lo = v
 		}
 		step := -miss * size / f
+		if math.Abs(step) <= 1e-9 {
+			return v + step // Newton's error is of the order of the step squared
+		}
 		next := v + step
 		if math.IsNaN(next) || next <= lo || next >= hi || math.Abs(step) > 30 {
 			next = fallback(v, miss, lo, hi)
 		}
-		if math.Abs(next-v) <= 1e-9 {
-			return next // Newton's error is of the order of the step squared
+		if next == v {
+			return v // the bracket has no room left
 		}
 		v = next
 	}
