@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"footing/plan/choices"
 	"footing/plan/result"
 	"footing/power"
 )
@@ -115,4 +116,5 @@ func (s *sizer) levers() {
 		set.dropout /= 2
 		add(fmt.Sprintf("half as many leaving (%s)", percentOf(set.dropout)), "closer follow-up", set)
 	}
+	s.out.Levers = choices.Sort(s.out.Levers)
 }
