@@ -12,6 +12,9 @@ import (
 // assuranceLimit is the largest first group that a search for an assurance target considers.
 const assuranceLimit = 1_000_000
 
+// enumeratedLimit is the same for a test whose power is a sum over all tables.
+const enumeratedLimit = 4000
+
 // assurance averages power over the distributions of the effect and lets the assurance target decide where it asks for more.
 func (s *sizer) assurance() {
 	r := s.built
@@ -32,7 +35,11 @@ func (s *sizer) assurance() {
 		}
 	}
 	if out.Target != nil {
-		n, err := a.NForAssurance(used, *out.Target, assuranceLimit)
+		limit := assuranceLimit
+		if s.design.Info().Saw {
+			limit = enumeratedLimit
+		}
+		n, err := a.NForAssurance(used, *out.Target, limit)
 		if err != nil {
 			out.OutOfReach = err.Error()
 		} else {

@@ -98,18 +98,27 @@ func window(n int, p float64) (pmf []float64, from int) {
 // rejection finds, for m events in all, the counts of the first group up to which and from which the test rejects. -1 and n1+1 where it never does.
 func rejection(m, n1, n2, sides int, alpha float64) (low, high int32) {
 	from, to := max(0, m-n2), min(n1, m)
-	pmf := make([]float64, to-from+1)
 	mode := min(to, max(from, int(float64(m+1)*float64(n1+1)/float64(n1+n2+2))))
-	pmf[mode-from] = 1
+	// Outward from the mode; counts rarer than 1e-18 of it are rejected whatever they are, and are left out.
+	const rare = 1e-18
+	up, down := []float64{1}, []float64{}
 	total := 1.0
-	for x := mode; x < to; x++ {
-		pmf[x+1-from] = pmf[x-from] * float64(n1-x) * float64(m-x) / (float64(x+1) * float64(n2-m+x+1))
-		total += pmf[x+1-from]
+	for x, p := mode, 1.0; x < to && p > rare; x++ {
+		p *= float64(n1-x) * float64(m-x) / (float64(x+1) * float64(n2-m+x+1))
+		up = append(up, p)
+		total += p
 	}
-	for x := mode; x > from; x-- {
-		pmf[x-1-from] = pmf[x-from] * float64(x) * float64(n2-m+x) / (float64(n1-x+1) * float64(m-x+1))
-		total += pmf[x-1-from]
+	for x, p := mode, 1.0; x > from && p > rare; x-- {
+		p *= float64(x) * float64(n2-m+x) / (float64(n1-x+1) * float64(m-x+1))
+		down = append(down, p)
+		total += p
 	}
+	from, to = mode-len(down), mode+len(up)-1
+	pmf := make([]float64, 0, len(down)+len(up))
+	for i := len(down) - 1; i >= 0; i-- {
+		pmf = append(pmf, down[i])
+	}
+	pmf = append(pmf, up...)
 	low, high = int32(from-1), int32(to+1)
 	if sides == 1 {
 		for sum, x := 0.0, from; x <= to; x++ {

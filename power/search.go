@@ -137,8 +137,8 @@ func sawSearch(d Design, effect, target, guess float64) (Sized, error) {
 		}
 		return v
 	}
-	// Far below the guess the power is short everywhere; start where it lies an eighth below.
-	n := max(info.MinN, int(guess*0.85)-8)
+	// Far below the guess the power is short everywhere; start a little below it, nearer the larger it is, since the saw's teeth shrink.
+	n := max(info.MinN, int(guess*(1-math.Min(0.15, 3/math.Sqrt(guess))))-8)
 	for n > info.MinN && holdsNear(holds, n, info.MinN) {
 		n = max(info.MinN, int(float64(n)*0.85)-1)
 	}
