@@ -105,8 +105,10 @@ func (m chiMixture) at(v, ts, shift float64) float64 {
 	}
 	e := math.Exp(-m.df*expExcess(v) - shift)
 	switch {
-	case z > 8.5:
+	case z > 8.3:
 		return e
+	case z > -2:
+		return e * math.Erfc(-z/math.Sqrt2) / 2
 	case z < -37:
 		return math.Exp(m.logAt(v) - shift)
 	}
@@ -138,7 +140,7 @@ func (m chiMixture) walk(from, h, shift, enough float64) float64 {
 		}
 		f := m.at(v, ts, shift)
 		sum += f
-		if f < 2e-17*(sum+enough) {
+		if f < 3e-16*(sum+enough) {
 			break
 		}
 	}
@@ -171,8 +173,8 @@ var strip = func() (table [13]struct{ y, density, tail float64 }) {
 	return table
 }()
 
-// fullDigits asks chiStep for an error of 1e-15.
-const fullDigits = 34.5
+// fullDigits asks chiStep for an error of 2e-14 at most; measured it is below 4e-14.
+const fullDigits = 31.5
 
 // chiStep is the step of the trapezoidal rule. The integrand is analytic in a strip around the real line; at imaginary distance y the rule's
 // error is exp(-2 pi y/h) times what the integrand has grown there, and the widest h that makes it exp(-digits) is taken.
